@@ -1,0 +1,81 @@
+import type { MapLayout, PlacedHole } from './layout';
+import { NOW_RING } from './heads';
+import type { Point } from './paths';
+
+/** A magnified view of the current hole and its neighbours, for maps whose heads are too small to read. */
+export interface Lens extends Point {
+  width: number;
+  height: number;
+  radius: number;
+  /** Places inside the lens, measured from its top left corner. */
+  holes: PlacedHole[];
+  /** False where no free place was found: the lens then covers part of the map. */
+  free: boolean;
+}
+
+const RADIUS = 29;
+const CAPTION = 34;
+
+/** Lens for the hole `nowId`: magnified true to direction, set where it covers no head. Null where no lens is wanted. */
+export function lensOf(layout: MapLayout, nowId: string | null, size = { width: 310, height: 254 }): Lens | null {
+  const now = layout.holes.find((h) => h.hole.id === nowId);
+  if (!layout.small || !now) return null;
+  const width = Math.min(size.width, layout.width);
+  const height = Math.min(size.height, layout.height);
+  return {
+    width,
+    height,
+    radius: RADIUS,
+    holes: magnified(layout, now, width, height),
+    ...lensPlace(layout, width, height),
+  };
+}
+
+/** Nearest neighbours, as many as fit without touching each other or the edge. */
+function magnified(layout: MapLayout, now: PlacedHole, width: number, height: number): PlacedHole[] {
+  const others = layout.holes
+    .filter((h) => h !== now)
+    .map((h) => ({ h, d: Math.hypot(h.x - now.x, h.y - now.y) }))
+    .sort((a, b) => a.d - b.d);
+  const nearest = others[0]?.d ?? 1;
+  const scale = (RADIUS * (NOW_RING + 1) + 8) / nearest;
+  const inside = others
+    .slice(0, 6)
+    .map(({ h }) => ({ hole: h.hole, x: (h.x - now.x) * scale, y: (h.y - now.y) * scale }));
+  for (let count = inside.length; count >= 0; count--) {
+    const chosen = [{ hole: now.hole, x: 0, y: 0 }, ...inside.slice(0, count)];
+    const box = spread(chosen);
+    if (box.width <= width && box.height <= height - CAPTION) {
+      const dx = (width - box.width) / 2 - box.left;
+      const dy = (height - CAPTION - box.height) / 2 - box.top;
+      return chosen.map((c) => ({ hole: c.hole, x: c.x + dx, y: c.y + dy }));
+    }
+  }
+  return [{ hole: now.hole, x: width / 2, y: (height - CAPTION) / 2 }];
+}
+
+function spread(holes: readonly PlacedHole[]): { left: number; top: number; width: number; height: number } {
+  const reach = (i: number): number => RADIUS * (i === 0 ? NOW_RING : 1.45) + 8;
+  const left = Math.min(...holes.map((h, i) => h.x - reach(i)));
+  const right = Math.max(...holes.map((h, i) => h.x + reach(i)));
+  const top = Math.min(...holes.map((h, i) => h.y - reach(i)));
+  const bottom = Math.max(...holes.map((h, i) => h.y + reach(i)));
+  return { left, top, width: right - left, height: bottom - top };
+}
+
+/** The free place nearest to the middle of the drawing, tried on a 10-unit grid. */
+function lensPlace(layout: MapLayout, width: number, height: number): Point & { free: boolean } {
+  const clear = layout.radius + 12;
+  const middle = { x: (layout.width - width) / 2, y: (layout.height - height) / 2 };
+  let best: (Point & { d: number }) | null = null;
+  for (let x = 0; x <= layout.width - width; x += 10) {
+    for (let y = 0; y <= layout.height - height; y += 10) {
+      const d = Math.hypot(x - middle.x, y - middle.y);
+      if ((!best || d < best.d) && !covers(layout, x, y, width, height, clear)) best = { x, y, d };
+    }
+  }
+  return best ? { x: best.x, y: best.y, free: true } : { ...middle, free: false };
+}
+
+const covers = (layout: MapLayout, x: number, y: number, width: number, height: number, clear: number): boolean =>
+  layout.holes.some((h) => h.x > x - clear && h.x < x + width + clear && h.y > y - clear && h.y < y + height + clear);
