@@ -58,6 +58,9 @@ const TOO_COARSE_BELOW = 1;
 
 type Answer = SuitabilityReason | null;
 
+/** Cut, not rounded: 0.96 must not read as 1.0 where the limit is 1. */
+const cutToTenth = (ratio: number): string => (Math.floor(ratio * 10) / 10).toFixed(1);
+
 function lifeReasons(wrench: WrenchSnapshot, at: IsoTime): Answer[] {
   const by = lapsedBy(wrench, at);
   const due = by === 'cycles' ? String(wrench.due.cycles) : (wrench.due.date ?? '');
@@ -112,7 +115,7 @@ function accuracyReasons(wrench: WrenchSnapshot, need: WrenchNeed): Answer[] {
   const fit = need.window && fitOfAccuracy(wrench, need.window, need.direction);
   const left = need.window && need.policy === 'guarded' ? shareGuardsLeave(wrench, need.window, need.direction) : null;
   return [
-    fit !== null && fit < TOO_COARSE_BELOW ? { code: 'tooCoarse', params: { ratio: fit.toFixed(1) } } : null,
+    fit !== null && fit < TOO_COARSE_BELOW ? { code: 'tooCoarse', params: { ratio: cutToTenth(fit) } } : null,
     left !== null && left < 0.5
       ? { code: 'guardsLeaveTooLittle', params: { percent: String(Math.floor(left * 100)) } }
       : null,
@@ -123,7 +126,7 @@ function warningsOf(wrench: WrenchSnapshot, need: WrenchNeed): SuitabilityWarnin
   const warnings: SuitabilityWarning[] = [];
   const fit = need.window && fitOfAccuracy(wrench, need.window, need.direction);
   if (fit !== null && fit >= TOO_COARSE_BELOW && fit < COARSE_BELOW) {
-    warnings.push({ code: 'coarse', params: { ratio: fit.toFixed(1) } });
+    warnings.push({ code: 'coarse', params: { ratio: cutToTenth(fit) } });
   }
   if (need.drive !== undefined && need.drive !== wrench.drive && wrench.adapterOk) {
     warnings.push({ code: 'driveAdapted', params: { has: wrench.drive, needs: need.drive } });
