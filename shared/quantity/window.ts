@@ -65,14 +65,14 @@ export function place(value: Quantity, window: Window): Place {
 
 /**
  * The window in another unit: target to the nearest, limits rounded inward, so that a reading equal to a shown limit is
- * `in` (J1, REF-UNIT-25). Takes more decimals than asked where the limits would cross. In its own unit it stays as written.
+ * `in` (J1, REF-UNIT-25). Takes more decimals than asked where the limits would meet or cross. In its own unit it stays as written.
  */
 export function showWindow(window: Window, unit: Unit, decimals: number): Window {
   if (unit === window.unit) return window;
   for (let digits = decimals; ; digits += 1) {
     const low = convertQuantity(lowLimit(window), unit, digits, 'up').value;
     const high = convertQuantity(highLimit(window), unit, digits, 'down').value;
-    if (compare(decimalToRational(low), decimalToRational(high)) <= 0 || digits > decimals + 12) {
+    if (compare(decimalToRational(low), decimalToRational(high)) < 0 || digits > decimals + 12) {
       return { target: convertQuantity(targetOf(window), unit, digits).value, low, high, unit };
     }
   }
