@@ -16,21 +16,14 @@ export const quantity = z.object({
   value: z.string().regex(/^-?\d{1,9}(\.\d{1,6})?$/),
   unit: z.enum(['N.m', 'lbf.ft', 'lbf.in', 'kgf.m', 'deg', 'mm', 'in']),
 });
+/** Lone surrogates and U+0000 can stand neither in a chain nor in the database. */
+const isStorable = (value: string): boolean => !/\p{Surrogate}/u.test(value) && !value.includes('\u0000');
 /** Text somebody typed: trimmed, well-formed, without U+0000. */
 export const text = (most: number) =>
-  z
-    .string()
-    .trim()
-    .min(1)
-    .max(most)
-    .refine((value) => value.isWellFormed() && !value.includes('\u0000'), { error: 'text.notWellFormed' });
+  z.string().trim().min(1).max(most).refine(isStorable, { error: 'text.notWellFormed' });
 /** Like `text`, but may be left empty. */
 export const optionalText = (most: number) =>
-  z
-    .string()
-    .trim()
-    .max(most)
-    .refine((value) => value.isWellFormed() && !value.includes('\u0000'), { error: 'text.notWellFormed' });
+  z.string().trim().max(most).refine(isStorable, { error: 'text.notWellFormed' });
 /** Public part of an ES256 or ECDH-ES key on P-256 (RFC 7517). */
 export const publicJwk = z.object({
   kty: z.literal('EC'),

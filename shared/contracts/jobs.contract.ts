@@ -27,7 +27,7 @@ export const createJob = defineEndpoint({
   method: 'POST',
   path: '/api/jobs',
   auth: 'office',
-  right: 'openJobs',
+  right: 'keepJobs',
   body: jobFields.extend({ joints: z.array(jointFields).max(60).default([]) }),
   responses: { 201: jobWhole },
 });
@@ -68,7 +68,7 @@ export const addJoint = defineEndpoint({
   method: 'POST',
   path: '/api/jobs/:id/joints',
   auth: 'office',
-  right: 'openJobs',
+  right: 'keepJobs',
   params: idParams,
   body: jointFields,
   responses: { 201: jointRow },

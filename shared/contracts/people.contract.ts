@@ -28,7 +28,7 @@ export const markLeft = defineEndpoint({
   method: 'POST',
   path: '/api/people/:id/leave',
   auth: 'office',
-  right: 'managePeople',
+  right: 'administer',
   params: idParams,
   body: z.object({ reason: text(300) }),
   responses: { 200: personRow },

@@ -37,7 +37,7 @@ export const createEnrolmentCode = defineEndpoint({
   method: 'POST',
   path: '/api/tablets/enrolment-codes',
   auth: 'office',
-  right: 'manageTablets',
+  right: 'administer',
   body: z.object({ note: z.string().trim().max(80).default('') }),
   responses: { 201: z.object({ code: z.string(), expiresAt: moment }) },
 });
@@ -83,7 +83,7 @@ export const listTablets = defineEndpoint({
   method: 'GET',
   path: '/api/tablets',
   auth: 'office',
-  right: 'manageTablets',
+  right: 'administer',
   responses: { 200: z.object({ tablets: z.array(tabletRow) }) },
 });
 /** Revokes a tablet's key: what it sends from then on is refused and stays on it. */
@@ -91,7 +91,7 @@ export const revokeTablet = defineEndpoint({
   method: 'POST',
   path: '/api/tablets/:id/revoke',
   auth: 'office',
-  right: 'manageTablets',
+  right: 'administer',
   params: idParams,
   body: z.object({ reason: text(300) }),
   responses: { 200: tabletRow },
