@@ -1,0 +1,27 @@
+import { createI18n } from 'vue-i18n';
+import { en } from './en';
+import { es } from './es';
+
+/** Languages of the interface. */
+export const LOCALES = ['en', 'es'] as const;
+export type Locale = (typeof LOCALES)[number];
+
+/** A stored or browser language as one of ours: `es-MX` is Spanish, anything unknown English. */
+export function localeOf(wish: string | null | undefined): Locale {
+  return LOCALES.find((locale) => wish?.toLowerCase().startsWith(locale)) ?? 'en';
+}
+
+/** The words of the interface. The caller keeps the chosen locale (and writes `lang` on the page). */
+export function createWords(locale: Locale = 'en') {
+  return createI18n({
+    legacy: false,
+    locale,
+    fallbackLocale: 'en',
+    messages: { en, es },
+    missingWarn: false,
+    fallbackWarn: false,
+  });
+}
+
+/** What `createWords` makes: a Vue plugin whose `global.locale` may be set. */
+export type Words = ReturnType<typeof createWords>;

@@ -1,0 +1,9 @@
+import type { en } from './en';
+
+type English = typeof en;
+
+declare module 'vue-i18n' {
+  // The English messages are the schema: t('…') completes their keys.
+  // eslint-plugin wants an interface here because the package merges it.
+  export interface DefineLocaleMessage extends English {}
+}
