@@ -3,10 +3,22 @@ import path from 'node:path';
 import js from '@eslint/js';
 import prettier from 'eslint-config-prettier';
 import vue from 'eslint-plugin-vue';
+import { defineConfig } from 'eslint/config';
 import globals from 'globals';
 import tseslint from 'typescript-eslint';
 
 const root = import.meta.dirname;
+
+/**
+ * @typedef {object} Room
+ * @property {string} in the folder or file it rules
+ * @property {string} [ends] the end of the names it rules
+ * @property {string[]} may folders and files it may import; 'type:' in front means types only
+ * @property {string[]} [mayNot] exceptions to these: folders, or parts of names such as '.routes'
+ * @property {string[]} [packages] the packages allowed; absent: any
+ * @property {string[]} [never] packages refused
+ * @property {string} why what the message says
+ */
 
 /** The floors of shared/: a room sees lower floors only, and nothing of the rooms beside it. */
 export const floors = [
@@ -20,6 +32,7 @@ export const floors = [
   ['contracts'],
 ];
 
+/** @type {Room[]} */
 const floorRooms = floors.flatMap((rooms, floor) =>
   rooms.map((name) => ({
     in: `shared/${name}`,
@@ -33,9 +46,8 @@ const screen = ['vue', 'vue-router', 'vue-i18n', 'pinia', 'quasar', '@quasar/ext
 const words = ['src/i18n', 'src/css'];
 
 /**
- * Who may import whom. The first row that fits a file rules it: `in` is its folder or file, `ends` the end of its name.
- * `may` lists folders and files ('type:' in front: types only), `packages` the packages allowed (absent: any),
- * `never` packages refused, and `why` is what the message says. A file always sees its own folder.
+ * Who may import whom. The first row that fits a file rules it; a file always sees its own folder.
+ * @type {Room[]}
  */
 export const rooms = [
   {
@@ -133,34 +145,45 @@ export const rooms = [
     may: ['shared', 'tests/support'],
     why: 'end-to-end tests see what a person sees: neither src nor server',
   },
-  { in: 'tests', may: ['shared', 'db', 'server', 'src', 'tests'], why: 'tests see all' },
+  { in: 'tests', may: ['shared', 'db', 'server', 'src', 'tests', 'eslint.config.js'], why: 'tests see all' },
   { in: 'vite.config.ts', may: [], why: 'tool configuration imports no source' },
   { in: 'drizzle.config.ts', may: [], why: 'tool configuration imports no source' },
 ];
 
+/** @type {Record<string, string>} */
 const aliases = { '@shared/': 'shared/', '@db/': 'db/', '@/': 'src/' };
 
-/** The project's file an import means, or null for a package. */
+/** The project's file an import means, or null for a package. @param {string} from @param {string} source */
 const projectPath = (from, source) => {
   if (source.startsWith('.')) return path.posix.normalize(path.posix.join(path.posix.dirname(from), source));
   const alias = Object.keys(aliases).find((prefix) => source.startsWith(prefix));
-  return alias ? aliases[alias] + source.slice(alias.length) : null;
+  return alias ? `${aliases[alias]}${source.slice(alias.length)}` : null;
 };
 
+/** @param {string} file @param {string} place */
 const isUnder = (file, place) => file === place || file.startsWith(`${place}/`) || file.startsWith(`${place}.`);
+/** @param {string} source */
 const packageOf = (source) =>
   source
     .split('/')
     .slice(0, source.startsWith('@') ? 2 : 1)
     .join('/');
 
-/** Why this file may not import that, or null. Tests see what stands beside them and every tool of testing. */
-export const refusal = (file, source, typesOnly) => {
+/** @param {string} file @param {boolean} isTest */
+const noNode = (file, isTest) =>
+  !isTest && /^(shared|src)\//.test(file) ? 'shared/ and src/ run in a browser: nothing of `node:` is there' : null;
+
+/**
+ * Why this file may not import that, or null. Tests see what stands beside them and every tool of testing.
+ * @param {string} file @param {string} source @param {boolean} [typesOnly]
+ */
+export const refusal = (file, source, typesOnly = false) => {
   const isTest = /\.test\.ts$/.test(file);
   const room = rooms.find((row) => isUnder(file, row.in) && (!row.ends || file.endsWith(row.ends)));
   if (!room) return `${file} stands in no room: put it where the table of rooms in eslint.config.js has a place for it`;
   const target = projectPath(file, source);
   if (target === null) {
+    if (source.startsWith('node:')) return noNode(file, isTest);
     const name = packageOf(source);
     const refused = !isTest && ((room.packages && !room.packages.includes(name)) || room.never?.includes(name));
     return refused && !(typesOnly && room.in === 'server/modules' && name !== 'express')
@@ -176,19 +199,22 @@ export const refusal = (file, source, typesOnly) => {
   return allowed ? null : `${room.why} (${target})`;
 };
 
+/** @type {import('eslint').Rule.RuleModule} */
 const roomRule = {
   meta: { type: 'problem', schema: [], messages: { room: '{{ reason }}' } },
   create(context) {
     const file = path.relative(root, context.filename).split(path.sep).join('/');
+    /** @param {any} node @param {boolean} typesOnly */
     const check = (node, typesOnly) => {
       if (typeof node.source?.value !== 'string') return;
       const reason = refusal(file, node.source.value, typesOnly);
       if (reason) context.report({ node, messageId: 'room', data: { reason } });
     };
+    /** @param {any} node */
     const isType = (node) =>
       node.importKind === 'type' ||
       node.exportKind === 'type' ||
-      (node.specifiers?.length > 0 && node.specifiers.every((one) => one.importKind === 'type'));
+      (node.specifiers?.length > 0 && node.specifiers.every((/** @type {any} */ one) => one.importKind === 'type'));
     return {
       ImportDeclaration: (node) => check(node, isType(node)),
       ExportNamedDeclaration: (node) => check(node, isType(node)),
@@ -210,6 +236,7 @@ const pureGlobals = [
 ];
 const notFromOutside = 'shared/ is pure: time, ids, keys, randomness and hashing come in as arguments';
 
+/** @type {import('eslint').Linter.RulesRecord} */
 const pure = {
   'no-restricted-globals': ['error', ...pureGlobals.map((name) => ({ name, message: notFromOutside }))],
   'no-restricted-properties': [
@@ -225,6 +252,12 @@ const pure = {
   ],
 };
 
+/** The tests of src/ run in Node.js, so its types are in the same program; the pages themselves have none of it. */
+const browserOnly = ['process', 'Buffer', 'global', 'require', '__dirname', 'setImmediate'].map((name) => ({
+  name,
+  message: 'src/ runs in a browser: nothing of Node.js is there',
+}));
+
 const lines = { skipBlankLines: true, skipComments: true };
 
 /** The linter's own proof that every folder of shared/ has a floor. */
@@ -235,7 +268,7 @@ const strangers = existsSync(path.join(root, 'shared'))
   : [];
 if (strangers.length > 0) throw new Error(`shared/${strangers.join(', shared/')}: no floor in eslint.config.js`);
 
-export default tseslint.config(
+export default defineConfig(
   { ignores: ['dist/**', 'coverage/**', '.local/**', 'node_modules/**', 'test-results/**', 'playwright-report/**'] },
   { linterOptions: { noInlineConfig: true, reportUnusedDisableDirectives: 'error' } },
   js.configs.recommended,
@@ -260,6 +293,8 @@ export default tseslint.config(
       'no-undef': 'off',
       '@typescript-eslint/consistent-type-imports': 'error',
       '@typescript-eslint/no-explicit-any': 'error',
+      // Another package's interface is widened by an empty one that extends ours.
+      '@typescript-eslint/no-empty-object-type': ['error', { allowInterfaces: 'with-single-extends' }],
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],
       '@typescript-eslint/restrict-template-expressions': ['error', { allowNumber: true, allowBoolean: true }],
       '@typescript-eslint/switch-exhaustiveness-check': ['error', { considerDefaultExhaustiveForUnions: true }],
@@ -277,6 +312,11 @@ export default tseslint.config(
     rules: { 'max-lines-per-function': ['error', { max: 40, ...lines }] },
   },
   { files: ['shared/**/*.ts'], ignores: ['**/*.test.ts'], rules: pure },
+  {
+    files: ['src/**/*.{ts,vue}'],
+    ignores: ['**/*.test.ts'],
+    rules: { 'no-restricted-globals': ['error', ...browserOnly] },
+  },
   {
     files: ['**/*.test.ts', 'tests/**/*.ts', 'e2e/**/*.ts'],
     rules: { '@typescript-eslint/unbound-method': 'off' },

@@ -35,9 +35,10 @@ export const runTypeScript = (program, environment) =>
 /**
  * Asks a child to stop and waits; kills it when it does not in time.
  * @param {import('node:child_process').ChildProcess} child @param {number} [milliseconds]
+ * @param {NodeJS.Signals} [signal]
  * @returns {Promise<void>}
  */
-export const stopChild = (child, milliseconds = 10_000) =>
+export const stopChild = (child, milliseconds = 10_000, signal = 'SIGTERM') =>
   new Promise((resolve) => {
     if (child.exitCode !== null || child.signalCode !== null) return resolve();
     const impatience = setTimeout(() => child.kill('SIGKILL'), milliseconds);
@@ -45,7 +46,7 @@ export const stopChild = (child, milliseconds = 10_000) =>
       clearTimeout(impatience);
       resolve();
     });
-    child.kill('SIGTERM');
+    child.kill(signal);
   });
 
 /** Whether the server on this port of our own machine says that it is well. @param {number} port @param {boolean} tls */
