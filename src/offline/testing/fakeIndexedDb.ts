@@ -1,0 +1,1 @@
+export { IDBFactory, IDBKeyRange, IDBDatabase as FDBDatabase, IDBObjectStore as FDBObjectStore } from 'fake-indexeddb';
