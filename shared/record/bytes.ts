@@ -1,3 +1,10 @@
+// The one piece of the host's that shared/ uses: every browser, worker and server has it, the language's own types do not.
+declare const TextEncoder: new () => { encode(text: string): Uint8Array };
+declare const TextDecoder: new (
+  label: 'utf-8',
+  options: { fatal: boolean; ignoreBOM: boolean },
+) => { decode(bytes: Uint8Array): string };
+
 const ALPHABET = 'ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz0123456789-_';
 
 /** The UTF-8 bytes of a text. */
