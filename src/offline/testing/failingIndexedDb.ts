@@ -136,9 +136,13 @@ function watchDatabase(database: IDBDatabase, control: Control): void {
 /** A fresh disk whose operations can be made to fail. */
 export function failingIndexedDb(): FailingIndexedDb {
   globalThis.IDBKeyRange = IDBKeyRange;
-  let mourn = (): void => undefined;
-  const death = new Promise<void>((resolve) => (mourn = resolve));
-  const control: Control = { count: 0, failNumber: 0, failure: 'killBefore', life: 0, dead: false, mourn };
+  let death = Promise.resolve();
+  const live = (): (() => void) => {
+    let mourn = (): void => undefined;
+    death = new Promise<void>((resolve) => (mourn = resolve));
+    return mourn;
+  };
+  const control: Control = { count: 0, failNumber: 0, failure: 'killBefore', life: 0, dead: false, mourn: live() };
   const disk = new FakeFactory();
   const factory = {
     open: (name: string, version?: number) => {
@@ -153,8 +157,10 @@ export function failingIndexedDb(): FailingIndexedDb {
     get count() {
       return control.count;
     },
-    death,
+    get death() {
+      return death;
+    },
     failAt: (number, failure) => Object.assign(control, { count: 0, failNumber: number, failure }),
-    restart: () => Object.assign(control, { failNumber: 0, dead: false, life: control.life + 1 }),
+    restart: () => Object.assign(control, { failNumber: 0, dead: false, life: control.life + 1, mourn: live() }),
   };
 }
