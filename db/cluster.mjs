@@ -47,6 +47,7 @@ export const enterableFolder = (wanted) => {
   const name = createHash('sha256').update(wanted).digest('hex').slice(0, 12);
   const fallback = path.join('/var/tmp', `boltwalk-${process.getuid?.() ?? 0}-${name}`);
   fs.mkdirSync(fallback, { recursive: true, mode: 0o711 });
+  if (fs.statSync(fallback).uid !== process.getuid?.()) throw new Error(`${fallback} belongs to somebody else.`);
   return fallback;
 };
 

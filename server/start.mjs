@@ -9,7 +9,7 @@ import path from 'node:path';
 import { openCluster } from '../db/cluster.mjs';
 import { dropDatabase } from '../db/clusterSql.mjs';
 import { ensurePages } from './start/build.mjs';
-import { runTypeScript, spawnTypeScript, stopChild, untilAnswering } from './start/children.mjs';
+import { endLeftoverServer, runTypeScript, spawnTypeScript, stopChild, untilAnswering } from './start/children.mjs';
 import { environmentOf, isEmptyDatabase, migrateDatabase, seedDatabase } from './start/database.mjs';
 import { ensureDebianPackages, ensureNode, ensurePackages, startNeeds } from './start/packages.mjs';
 import { holderOf, localPlace, rememberedPort } from './start/place.mjs';
@@ -77,8 +77,8 @@ const start = async (closers) => {
   const database = await openDatabase(environment, closers);
   const server = spawnTypeScript('server/main.ts', { ...environment, ...database, DIST_DIR: await pages });
   closers.push(() => stopChild(server));
+  fs.writeFileSync(lock, `${process.pid}\n${environment.PUBLIC_URL}\n${server.pid}\n`);
   await untilAnswering(server, { port: Number(environment.PORT), tls: Boolean(environment.TLS_CERT) });
-  fs.writeFileSync(lock, `${process.pid}\n${environment.PUBLIC_URL}\n`);
   say(`\nBoltwalk is ready: ${environment.PUBLIC_URL}\nCtrl-C stops it; the data stays in ${place}.`);
   await new Promise((resolve) => server.once('exit', resolve));
   throw new Error('The server ended by itself.');
@@ -115,6 +115,7 @@ const main = async () => {
     say(`Boltwalk is already running (process ${holder}): ${address || 'it is just starting'}`);
     return;
   }
+  if (fs.existsSync(lock)) await endLeftoverServer(Number(fs.readFileSync(lock, 'utf8').split('\n')[2]));
   fs.writeFileSync(lock, `${process.pid}\n`);
   /** @type {Closers} */
   const closers = [];

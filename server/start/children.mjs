@@ -1,5 +1,6 @@
 /** Runs the project's own programs as children. Imports only `node:`. */
 import { spawn } from 'node:child_process';
+import fs from 'node:fs';
 import http from 'node:http';
 import https from 'node:https';
 import { setTimeout as sleep } from 'node:timers/promises';
@@ -48,6 +49,18 @@ export const stopChild = (child, milliseconds = 10_000, signal = 'SIGTERM') =>
     });
     child.kill(signal);
   });
+
+/**
+ * Ends the server that a killed run left behind.
+ * @param {number} pid as it was written down then; by now it may be anybody's
+ */
+export const endLeftoverServer = async (pid) => {
+  const commandLine = `/proc/${pid}/cmdline`;
+  const isOurs = () => fs.existsSync(commandLine) && fs.readFileSync(commandLine, 'utf8').includes('server/main.ts');
+  if (!pid || !isOurs()) return;
+  process.kill(pid, 'SIGKILL');
+  for (let waits = 0; isOurs() && waits < 100; waits += 1) await sleep(50);
+};
 
 /** Whether the server on this port of our own machine says that it is well. @param {number} port @param {boolean} tls */
 const isWell = (port, tls) =>

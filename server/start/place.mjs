@@ -28,14 +28,15 @@ export const localPlace = (kind) => {
 };
 
 /**
- * The port of the last time if it is still free, else the preferred one, else any; remembered for the next time.
+ * The port of the first time, while it is free; else any for this once. It is kept because an address is more than a
+ * number: what a browser stored under one port it does not show under another.
  * @param {string} place @param {number} preferred
  */
 export const rememberedPort = async (place, preferred) => {
   const file = path.join(place, 'port');
-  const last = fs.existsSync(file) ? Number(fs.readFileSync(file, 'utf8')) : preferred;
-  const port = await freePort(last || preferred);
-  fs.writeFileSync(file, String(port));
+  const first = fs.existsSync(file) ? Number(fs.readFileSync(file, 'utf8')) : 0;
+  const port = await freePort(first || preferred);
+  if (!first) fs.writeFileSync(file, String(port));
   return port;
 };
 
@@ -56,7 +57,7 @@ export const holderOf = (file) => {
   return pid && pid !== process.pid && isAlive(pid) ? pid : null;
 };
 
-/** Takes a lock file unless somebody alive holds it; the note stands on its second line. @param {string} file */
+/** Takes a lock file unless somebody alive holds it. @param {string} file */
 const tryLock = (file) => {
   if (holderOf(file) !== null) return false;
   fs.rmSync(file, { force: true });

@@ -3,8 +3,8 @@ import fs from 'node:fs';
 import path from 'node:path';
 import { freePort } from '../../db/cluster.mjs';
 import { ensurePages } from '../../server/start/build.mjs';
-import { spawnTypeScript, stopChild, untilAnswering } from '../../server/start/children.mjs';
-import { localPlace } from '../../server/start/place.mjs';
+import { endLeftoverServer, spawnTypeScript, stopChild, untilAnswering } from '../../server/start/children.mjs';
+import { isAlive, localPlace } from '../../server/start/place.mjs';
 import type { TestDatabase } from './testDatabase';
 import { createTestDatabase } from './testDatabase';
 
@@ -36,9 +36,20 @@ interface ServerOptions {
   environment?: Record<string, string>;
 }
 
-const makeFolder = () => {
+/** Ends the servers of runs that were killed before they could do so themselves. */
+const removeOrphans = async (servers: string) => {
+  for (const name of fs.readdirSync(servers)) {
+    if (isAlive(Number(name.split('-')[0]))) continue;
+    const pidFile = path.join(servers, name, 'pid');
+    if (fs.existsSync(pidFile)) await endLeftoverServer(Number(fs.readFileSync(pidFile, 'utf8')));
+    fs.rmSync(path.join(servers, name), { recursive: true, force: true });
+  }
+};
+
+const makeFolder = async () => {
   const servers = path.join(localPlace('test'), 'servers');
   fs.mkdirSync(servers, { recursive: true });
+  await removeOrphans(servers);
   return fs.mkdtempSync(path.join(servers, `${process.pid}-`));
 };
 
@@ -63,7 +74,7 @@ const environmentFor = async (folder: string, port: number, database: TestDataba
 
 /** Starts the real server and waits until it answers. Close it in `afterAll`. */
 export const startServerProcess = async (options: ServerOptions = {}): Promise<ServerProcess> => {
-  const folder = makeFolder();
+  const folder = await makeFolder();
   const port = await freePort();
   const database = options.database ?? (await createTestDatabase({ seeded: options.seeded }));
   const environment = await environmentFor(folder, port, database, options);
@@ -74,6 +85,7 @@ export const startServerProcess = async (options: ServerOptions = {}): Promise<S
     const output = fs.openSync(logFile, 'a');
     const child = spawnTypeScript('server/main.ts', environment, { stdio: ['ignore', output, output] });
     fs.closeSync(output);
+    fs.writeFileSync(path.join(folder, 'pid'), String(child.pid));
     await untilAnswering(child, { port }).catch((error: Error) => {
       child.kill('SIGKILL');
       throw new Error(`${error.message}\n${log().slice(-4000)}`);
