@@ -23,6 +23,7 @@ import {
   fastenerOf,
   holeById,
   looseningOrder,
+  makesUsed,
   sameSlot,
   slotKey,
   takesReading,
@@ -325,8 +326,8 @@ export function workInstruction(state: WalkState, now: Now): Instruction {
 /** Ways to go on after an interruption when the stage was begun (W9). */
 export function resumeWays(state: WalkState, slot: SlotRef, stage: Stage): ResumeWay[] {
   const jointOnly = walkPasses(state).find((pass) => pass.id === slot.pass)?.rework.allows === 'joint';
-  const spent =
-    usedFrom(state, slot.hole) !== null && stage.kind === 'turn' && state.opened?.purpose === 'finalAssembly';
+  const used = state.holes[slot.hole]?.used === true || makesUsed(state, slot);
+  const spent = used && state.opened?.purpose === 'finalAssembly';
   const renewing: ResumeWay[] = jointOnly ? ['restartJoint'] : spent ? ['replace'] : ['restart', 'replace'];
   if (stage.kind !== 'turn') return ['asInstructed', ...renewing];
   return ['ownTotal', ...(state.stripesPainted ? (['stripe'] as const) : []), ...renewing];

@@ -32,7 +32,9 @@ function totalOf(entry: ReadingEntry, placement: Placement): Quantity {
     const higher = placement.kind === 'adds' && standing !== null && compareQuantities(standing, value) > 0;
     return higher ? standing : value;
   }
-  const adds = placement.kind === 'adds' || entry.shows !== 'total';
+  // A wrench zeroed for *pull again* knows nothing of what stands; the stripe shows the whole turn.
+  const pulledOn = placement.before?.status === 'partial' && entry.source !== 'marked';
+  const adds = placement.kind === 'adds' || entry.shows !== 'total' || pulledOn;
   return adds && standing !== null ? addQuantities(standing, value) : value;
 }
 

@@ -158,56 +158,53 @@ function sentBackOffers({ deviation }: Case): Offers {
   }
 }
 
-function offersOf(found: Case): Offers {
-  const { deviation } = found;
-  switch (deviation.kind) {
-    case 'over':
-      return overOffers(found);
-    case 'under':
-      return underOffers(found);
-    case 'endTorqueOver':
-    case 'endTorqueUnder':
-      return join(renewal(found), offer('restartJoint'), acceptance(found), deny('pullAgain', 'pastWindow'));
-    case 'lookAgain':
-    case 'endTorqueLookAgain':
-    case 'torqueAfterTurn':
-      return join(offer('asItIs'), renewal(found), deny('pullAgain', 'secondPullTightens'));
-    case 'clickedStill':
-    case 'clickedTwice':
-      return clickedOffers(found);
-    case 'earlierStageMissing':
-    case 'differentUnknown':
-      return renewal(found);
-    case 'strippedThread':
-      return join(
-        offer('restartJoint'),
-        deny('accept', 'stripped'),
-        deny('pullAgain', 'stripped'),
-        deny('goOn', 'stripped'),
-      );
-    case 'brokenFastener':
-      return join(
-        renewal(found).offered.includes('replace') ? offer('replace') : none,
-        offer('restartJoint'),
-        deny('accept', 'stripped'),
-      );
-    case 'noPartLeft':
-      return offer('awaitPart');
-    case 'stepNo':
-    case 'stepOutside':
-    case 'doesNotRunIn':
-      return deviation.hole === null ? offer('repeatStep') : offer('repeatStep', 'otherFastener');
-    case 'finishWithinPassed':
-      return offer('restartJoint', 'accept', 'hold');
-    case 'stillMoving':
-    case 'witnessMoved':
-      return offer('asItIs', 'restartJoint');
-    case 'sentBack':
-      return sentBackOffers(found);
-    default:
-      return none;
-  }
+const endTorqueOffers = (found: Case): Offers =>
+  join(renewal(found), offer('restartJoint'), acceptance(found), deny('pullAgain', 'pastWindow'));
+
+/** R8: look; never pull again, never check by pulling: a second pull tightens. */
+const lookOffers = (found: Case): Offers =>
+  join(offer('asItIs'), renewal(found), deny('pullAgain', 'secondPullTightens'));
+
+/** R7: nothing lets a stripped thread go on. */
+const strippedOffers = (): Offers =>
+  join(offer('restartJoint'), deny('accept', 'stripped'), deny('pullAgain', 'stripped'), deny('goOn', 'stripped'));
+
+function brokenOffers(found: Case): Offers {
+  const replaces = renewal(found).offered.includes('replace') ? offer('replace') : none;
+  return join(replaces, offer('restartJoint'), deny('accept', 'stripped'));
 }
+
+/** R7: put right and repeat the step, another fastener, or pause. */
+const stepOffers = ({ deviation }: Case): Offers =>
+  deviation.hole === null ? offer('repeatStep') : offer('repeatStep', 'otherFastener');
+
+const jointLook = (): Offers => offer('asItIs', 'restartJoint');
+
+const byKind: Partial<Record<Deviation['kind'], (found: Case) => Offers>> = {
+  over: overOffers,
+  under: underOffers,
+  endTorqueOver: endTorqueOffers,
+  endTorqueUnder: endTorqueOffers,
+  lookAgain: lookOffers,
+  endTorqueLookAgain: lookOffers,
+  torqueAfterTurn: lookOffers,
+  clickedStill: clickedOffers,
+  clickedTwice: clickedOffers,
+  earlierStageMissing: renewal,
+  differentUnknown: renewal,
+  strippedThread: strippedOffers,
+  brokenFastener: brokenOffers,
+  noPartLeft: () => offer('awaitPart'),
+  stepNo: stepOffers,
+  stepOutside: stepOffers,
+  doesNotRunIn: stepOffers,
+  finishWithinPassed: () => offer('restartJoint', 'accept', 'hold'),
+  stillMoving: jointLook,
+  witnessMoved: jointLook,
+  sentBack: sentBackOffers,
+};
+
+const offersOf = (found: Case): Offers => byKind[found.deviation.kind]?.(found) ?? none;
 
 /** R10: typed, and no reading at whatever hole since. */
 export function mayVoid(state: WalkState, reading: ReadingRecord): boolean {

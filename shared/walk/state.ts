@@ -57,6 +57,8 @@ export interface ReadingRecord {
   countsFor: SlotRef | null;
   /** What stood at that slot before: comes back when the reading is voided (R10). */
   before: SlotOutcome | null;
+  /** Where the hole's catch-up was to end before it: comes back likewise. */
+  catchUpTo: string | null;
   status: 'stands' | 'superseded' | 'voided' | 'elsewhere';
   voidReason?: string;
 }
@@ -167,47 +169,47 @@ const freshHole = (): HoleState => ({
   catchUpTo: null,
 });
 
+const nothingYet: Omit<WalkState, 'procedure' | 'procedureHash' | 'holes'> = {
+  opened: null,
+  seq: -1,
+  boot: '',
+  at: '',
+  mono: 0,
+  tablet: '',
+  writer: 'tablet',
+  hands: { pulls: '', records: '' },
+  everHands: [],
+  paused: null,
+  stopped: null,
+  voided: null,
+  steps: {},
+  stripesPainted: false,
+  parts: [],
+  drawn: {},
+  restarts: 0,
+  wrenches: {},
+  wrenchNow: null,
+  rounds: {},
+  roundsEnded: [],
+  passTimes: {},
+  waitsSkipped: [],
+  readings: [],
+  deviations: [],
+  reworks: [],
+  toRepair: [],
+  retype: null,
+  resume: null,
+  mustLook: [],
+  begun: null,
+  received: null,
+  signatures: [],
+  notes: [],
+  photos: [],
+  loosened: [],
+};
+
 /** The state before the first event of a walk of this revision. `hash`: SHA-256 of the document's canonical JSON. */
 export function initialWalk(procedure: ProcedureDocument, hash: string): WalkState {
-  return {
-    procedure,
-    procedureHash: hash,
-    opened: null,
-    seq: -1,
-    boot: '',
-    at: '',
-    mono: 0,
-    tablet: '',
-    writer: 'tablet',
-    hands: { pulls: '', records: '' },
-    everHands: [],
-    paused: null,
-    stopped: null,
-    voided: null,
-    steps: {},
-    stripesPainted: false,
-    parts: [],
-    drawn: {},
-    restarts: 0,
-    wrenches: {},
-    wrenchNow: null,
-    holes: Object.fromEntries(procedure.holes.map((hole) => [hole.id, freshHole()])),
-    rounds: {},
-    roundsEnded: [],
-    passTimes: {},
-    waitsSkipped: [],
-    readings: [],
-    deviations: [],
-    reworks: [],
-    toRepair: [],
-    retype: null,
-    resume: null,
-    mustLook: [],
-    begun: null,
-    received: null,
-    signatures: [],
-    notes: [],
-    photos: [],
-    loosened: [],
-  };
+  const holes = Object.fromEntries(procedure.holes.map((hole) => [hole.id, freshHole()]));
+  return { ...nothingYet, procedure, procedureHash: hash, holes };
 }

@@ -7,7 +7,7 @@ import { needOf } from '../instruction';
 import { suits } from '../../crib/suitability';
 import { refusal, type Refusal } from '../refusal';
 import { stepDone, stepsOfHole } from '../route';
-import { holeById, stageOf } from '../slots';
+import { holeById } from '../slots';
 import type { WalkState } from '../state';
 import {
   firstOf,
@@ -164,7 +164,3 @@ export function decideWaitSkipped(state: WalkState, command: CommandOf<'wait.ski
   const waits = instruction.kind === 'wait' && instruction.pass.id === data.pass;
   return waits ? ok({ type: command.type, data }) : err(refusal('noWait'));
 }
-
-/** Whether a pass of this id and stage exists; for reports that name a place. */
-export const placeExists = (state: WalkState, pass: string, stage: string): boolean =>
-  stageOf(state, { pass, stage }) !== null;

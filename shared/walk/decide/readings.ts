@@ -10,7 +10,7 @@ import { placeReading } from '../placement';
 import { refusal, type Refusal } from '../refusal';
 import { directionOf, holeById, labelOf, sameSlot, stageOf } from '../slots';
 import type { WalkState } from '../state';
-import { firstOf, instructionFor, needsHands, needsRight, type CommandOf } from './guards';
+import { instructionFor, needsHands, needsRight, type CommandOf } from './guards';
 
 const slotOf = (data: SlotRef): SlotRef => ({ pass: data.pass, hole: data.hole, stage: data.stage, round: data.round });
 
@@ -77,7 +77,7 @@ function turnRefusal(data: ReadingEntry, { mode, endTorque, standing }: PullInst
   if (mode === 'pullAgain' && data.shows !== 'thisPull') return refusal('thisPullOnly');
   if (mode === 'finishByTotal' && data.shows !== 'total') return refusal('totalOnly');
   if (mode === 'finishByStripe' && data.source !== 'marked') return refusal('markedOnly');
-  const behind = data.shows === 'total' && standing !== null && compareQuantities(data.value, standing) < 0;
+  const behind = data.source === 'marked' && standing !== null && compareQuantities(data.value, standing) < 0;
   return behind && mode !== 'retype' ? refusal('totalBelowStanding') : null;
 }
 
@@ -114,15 +114,14 @@ export function decideReadingTaken(state: WalkState, command: CommandOf<'reading
   const found = instructedPull(state, command);
   if (!found.ok) return found;
   const instruction = found.value;
-  const refused = firstOf(
-    needsHands(state, command),
-    slotRefusal(state, data, instruction),
-    retypeRefusal(state, data),
-    valueRefusal(state, data, instruction),
-    wrenchRefusal(state, data, instruction, command.at),
-    receivedRefusal(state, data),
-    instruction.pass.repeat && data.moved === undefined ? refusal('movedMissing') : null,
-  );
+  const refused =
+    needsHands(state, command) ??
+    slotRefusal(state, data, instruction) ??
+    retypeRefusal(state, data) ??
+    valueRefusal(state, data, instruction) ??
+    wrenchRefusal(state, data, instruction, command.at) ??
+    receivedRefusal(state, data) ??
+    (instruction.pass.repeat && data.moved === undefined ? refusal('movedMissing') : null);
   if (refused) return err(refused);
   const placement = placeReading(state, data, { ...slotOf(data), hole: data.insteadOf ?? data.hole });
   return ok({ type: 'reading.taken', data: { ...data, ...judgeReading(state, data, placement) } });

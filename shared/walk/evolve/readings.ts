@@ -54,6 +54,7 @@ function recordOf(state: WalkState, event: EventContext, data: ReadingTaken, pla
     data,
     countsFor: counts ? placement.slot : null,
     before: placement.before,
+    catchUpTo: hole?.catchUpTo ?? null,
     status: 'stands',
   };
 }
@@ -93,8 +94,7 @@ function withHands(state: WalkState): WalkState {
   return { ...state, everHands: hands };
 }
 
-function applyReading(state: WalkState, event: EventContext, data: ReadingTaken): WalkState {
-  const placement = placeReading(state, data, instructedSlot(data));
+function applyReading(state: WalkState, event: EventContext, data: ReadingTaken, placement: Placement): WalkState {
   const off = kindOf(state, data, placement);
   const record = recordOf(state, event, data, placement);
   let next: WalkState = {
@@ -117,7 +117,7 @@ function applyReading(state: WalkState, event: EventContext, data: ReadingTaken)
 export function readingTaken(state: WalkState, event: EventContext, data: ReadingTaken): WalkState {
   const wrenchNow = data.wrench ?? state.wrenchNow;
   const received = state.received?.seq === data.received ? null : state.received;
-  return applyReading({ ...state, wrenchNow, received }, event, data);
+  return applyReading({ ...state, wrenchNow, received }, event, data, placeReading(state, data, instructedSlot(data)));
 }
 
 /** `reading.elsewhere`: a physical fact of a branch that was not chosen; it adds like any other pull (W11). */
@@ -125,7 +125,7 @@ export function readingElsewhere(state: WalkState, event: EventContext, data: Re
   const { branch: _branch, seq: _seq, ...entry } = data;
   const placement = placeReading(state, { ...entry, insteadOf: entry.insteadOf ?? '' }, instructedSlot(entry));
   const taken = { ...entry, ...judgeReading(state, entry, placement) };
-  const next = applyReading(state, event, taken);
+  const next = applyReading(state, event, taken, placement);
   const readings = next.readings.map((record) =>
     record.seq === event.seq ? { ...record, status: 'elsewhere' as const } : record,
   );
@@ -154,9 +154,15 @@ export function readingVoided(state: WalkState, event: EventContext, reading: nu
   let next: WalkState = { ...withRoundsBack(state, slot), readings };
   next = withHole(next, slot.hole, (hole) => {
     const { [slotKey(slot)]: _gone, ...slots } = hole.slots;
-    return { ...hole, slots: record.before ? { ...slots, [slotKey(slot)]: record.before } : slots };
+    return {
+      ...hole,
+      catchUpTo: record.catchUpTo,
+      slots: record.before ? { ...slots, [slotKey(slot)]: record.before } : slots,
+    };
   });
   next = withDeviations(next, isAbout(reading), (deviation) => ({ ...deviation, status: 'withdrawn' }));
+  const gone = new Set(next.deviations.filter(isAbout(reading)).map((deviation) => deviation.id));
+  next = { ...next, reworks: next.reworks.filter((rework) => !gone.has(rework.deviation ?? '')) };
   const wasOff = kindOf(state, record.data, { kind: 'instructed', slot, before: record.before }) !== null;
   if (wasOff) {
     next = withDeviation(next, event, {
