@@ -82,7 +82,7 @@ const endToEnd = async () => {
 
 const lintCommands = () => [
   [eslint, '.', '--max-warnings', '0', '--cache', '--cache-location', path.join(cache, 'eslint')],
-  [knip, '--no-progress'],
+  [knip, '--no-progress', '--no-config-hints'],
 ];
 
 /** @param {string} folder */
