@@ -141,7 +141,7 @@ export class Walk {
   }
 
   private apply(body: EventBody, { at, mono, boot, by, known, tablet }: WalkCommand): void {
-    const event = { ...body, seq: this.state.seq + 1, branch: 0, at, mono, boot, by, known, tablet } as WalkEvent;
+    const event = { ...body, seq: this.state.seq + 1, branch: 0, at, mono, boot, by, known, tablet };
     this.events.push(event);
     this.state = evolve(this.state, event);
   }
