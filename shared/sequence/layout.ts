@@ -1,5 +1,5 @@
 /** A hole on the map: its id and its place in millimetres, seen facing the heads, x to the right, y downwards (A1). */
-export interface PlacedHole {
+export interface HolePosition {
   id: string;
   x: number;
   y: number;
@@ -18,7 +18,7 @@ const extent = (values: readonly number[]): { middle: number; size: number } => 
 };
 
 /** Turns the map so that its longer side comes first; equal sides count as lying across the page. */
-export function align(holes: readonly PlacedHole[]): AlignedHole[] {
+export function align(holes: readonly HolePosition[]): AlignedHole[] {
   const x = extent(holes.map((hole) => hole.x));
   const y = extent(holes.map((hole) => hole.y));
   const upright = y.size > x.size;

@@ -1,21 +1,21 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { align, type PlacedHole } from './layout';
+import { align, type HolePosition } from './layout';
 import { row } from './row';
 import { spiral } from './spiral';
 
 /** Two rows, the upper named T0 … from the left, the lower B0 …; 92 mm apart along, 240 mm across. */
-const twoRows = (columns: number): PlacedHole[] =>
+const twoRows = (columns: number): HolePosition[] =>
   Array.from({ length: columns }, (_, i) => [
     { id: `T${i}`, x: i * 92, y: 0 },
     { id: `B${i}`, x: i * 92, y: 240 },
   ]).flat();
 
-const turned = (holes: PlacedHole[]): PlacedHole[] => holes.map(({ id, x, y }) => ({ id, x: -y, y: x }));
+const turned = (holes: HolePosition[]): HolePosition[] => holes.map(({ id, x, y }) => ({ id, x: -y, y: x }));
 const place = fc.integer({ min: -600, max: 600 });
 const anyHoles = fc
   .array(fc.tuple(place, place), { maxLength: 40 })
-  .map((places) => places.map(([x, y], i): PlacedHole => ({ id: String(i), x, y })));
+  .map((places) => places.map(([x, y], i): HolePosition => ({ id: String(i), x, y })));
 
 describe('spiral (A1, REF-SEQ-33)', () => {
   it('walks a head of fourteen from the middle pair outward, end by end', () => {

@@ -1,4 +1,4 @@
-import { align, cluster, type AlignedHole, type PlacedHole } from './layout';
+import { align, cluster, type AlignedHole, type HolePosition } from './layout';
 
 /** How far apart (mm) two holes may be and still count as level. */
 export const LEVEL_WITHIN_MM = 10;
@@ -28,7 +28,7 @@ function nearestFirst(holes: readonly AlignedHole[], before: AlignedHole | undef
  * end and then the other, starting with the side where the last bolt was. Two rows of seven give the middle pair, then
  * left pair, right pair, next left pair … A permutation of the holes' ids. Holes within `levelWithin` mm count as level.
  */
-export function spiral(holes: readonly PlacedHole[], levelWithin = LEVEL_WITHIN_MM): string[] {
+export function spiral(holes: readonly HolePosition[], levelWithin = LEVEL_WITHIN_MM): string[] {
   if (holes.length === 0) return [];
   const order: AlignedHole[] = [];
   for (const ring of cluster(align(holes), (hole) => Math.abs(hole.along), levelWithin)) {
