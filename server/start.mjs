@@ -36,7 +36,7 @@ const serverEnvironment = async () => {
   const port = process.env.PORT ?? String(await rememberedPort(place, 4180));
   const scheme = process.env.TLS_CERT ? 'https' : 'http';
   return {
-    DEMO: '1',
+    DEMO: process.env.NODE_ENV === 'production' ? '0' : '1', // the server refuses a demo in production
     HOST: '127.0.0.1',
     PUBLIC_URL: `${scheme}://localhost:${port}`,
     APP_SECRET: rememberedSecret(),
@@ -49,7 +49,7 @@ const serverEnvironment = async () => {
 /** @param {import('../db/cluster.mjs').Cluster} cluster @param {Record<string, string>} environment */
 const prepareDatabase = async (cluster, environment) => {
   await migrateDatabase(cluster.settings, databaseName);
-  if (environment.DEMO !== '1' || !isEmptyDatabase(cluster.settings, databaseName)) return;
+  if (!['1', 'true'].includes(environment.DEMO ?? '') || !isEmptyDatabase(cluster.settings, databaseName)) return;
   say('Filling the demo …');
   await seedDatabase(cluster.settings, databaseName, environment);
 };
