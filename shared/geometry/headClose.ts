@@ -27,7 +27,7 @@ export interface CloseGeometry {
   cross: string;
   stripe: Omit<Stripe, 'kind'> | null;
   label: { size: number };
-  started: (Point & { line: string; anchor: 'start' | 'end' }) | null;
+  started: Point | null;
   flag: CloseFlag | null;
 }
 
@@ -63,17 +63,13 @@ export function closeGeometry(state: HeadState, label: string): CloseGeometry {
         ? null
         : { angle: turn, x: -15, y: -R - 32, width: 30, height: R * 0.38 + 32 },
     label: { size: Math.min(104, (R * 1.5) / Math.max(1, label.length * 0.55)) },
-    started: state.hasTick && state.stripeDeg !== null ? startedAt(hand) : null,
+    started: state.hasTick && state.stripeDeg !== null ? STARTED : null,
     flag: state.flag ? flagOf(state.flag, state.fill === 'accepted') : null,
   };
 }
 
-const startedAt = (hand: number): Point & { line: string; anchor: 'start' | 'end' } => ({
-  x: 118 * hand,
-  y: -R - 24,
-  line: `M${20 * hand} ${-R - 31}H${108 * hand}`,
-  anchor: hand > 0 ? 'start' : 'end',
-});
+/** Always on the west side of the tick: the east belongs to the flag. */
+const STARTED: Point = { x: -18, y: -R - 28 };
 
 function ticksOf(group: string): string {
   const count = tickCount(group);
@@ -99,7 +95,7 @@ function pegsOf(
 function flagOf(flag: NonNullable<HeadState['flag']>, outlined: boolean): CloseFlag {
   const diamond = flag.kind === 'lookAgain' || flag.kind === 'apart';
   const half = Math.max(46, flag.text.length * 11 + 14);
-  const place = { x: 222 - (diamond ? 36 : half), y: 164 };
+  const place = { x: 226 - (diamond ? 40 : half), y: flag.kind === 'under' ? 160 : -164 };
   if (diamond) {
     return {
       ...place,

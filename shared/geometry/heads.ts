@@ -42,6 +42,8 @@ export interface HeadDraw {
   label: string;
   /** Where the tick stands on the casting, degrees from twelve o'clock: 90 per quarter turn of the map. */
   tickDeg?: number;
+  /** Read from near (office, overview): heads keep number and hexagon down to figures of 16 px. */
+  lean?: boolean;
 }
 
 /** Bar of paint on the head, drawn at `angle`; x, y, width, height before turning. */
@@ -82,10 +84,14 @@ export const SMALL_HEAD = 44;
 export const NOW_DISC = 1.27;
 export const NOW_RING = 1.79;
 const MOST_LANES = 3;
+const LEAN_RADIUS = 17.6;
+
+/** Whether a head of this radius is drawn in its small form; `lean` where the drawing is read from near. */
+export const isSmallHead = (radius: number, lean = false): boolean => radius < (lean ? LEAN_RADIUS : SMALL_HEAD / 2);
 
 /** Geometry of one head from its state. Pure; same input, same paths. */
 export function headGeometry(state: HeadState, draw: HeadDraw): HeadGeometry {
-  const small = draw.radius * 2 < SMALL_HEAD;
+  const small = isSmallHead(draw.radius, draw.lean);
   const radius = state.now ? draw.radius * (small ? 1.1 : NOW_DISC) : draw.radius;
   const k = radius / 36;
   const tick = draw.tickDeg ?? 0;

@@ -1,4 +1,4 @@
-import { NOW_RING, SMALL_HEAD } from './heads';
+import { isSmallHead, NOW_RING } from './heads';
 import type { Point } from './paths';
 
 /** One hole on the map, millimetres, seen facing the heads. */
@@ -31,6 +31,8 @@ export interface MapBox {
   height: number;
   /** Quarter turns clockwise, to match where one stands (A1). */
   quarterTurns?: number;
+  /** Read from near: numbers stay on smaller heads. */
+  lean?: boolean;
 }
 
 /** A hole with its place on the drawing. */
@@ -149,7 +151,7 @@ export function layoutMap(spec: MapSpec, box: MapBox): MapLayout {
     radius: fit.radius,
     ringRadius: fit.radius * NOW_RING,
     touchRadius: Math.max(24, fit.radius + 8),
-    small: fit.radius * 2 < SMALL_HEAD,
+    small: isSmallHead(fit.radius, box.lean),
     tickDeg: quarterTurnsOf(box.quarterTurns ?? 0) * 90,
     holes,
     bores: frame.bores.map((b) => ({ ...b, ...place(b), r: b.r * Math.min(fit.sx, fit.sy) })),

@@ -1,4 +1,4 @@
-import type { MapLayout, PlacedHole } from './layout';
+import type { MapLayout, PlacedHole, PlacedSide } from './layout';
 import { NOW_RING } from './heads';
 import type { Point } from './paths';
 
@@ -13,11 +13,12 @@ export interface Lens extends Point {
   free: boolean;
 }
 
-const RADIUS = 29;
+const RADIUS = 30;
 const CAPTION = 34;
+const EDGE = 4;
 
 /** Lens for the hole `nowId`: magnified true to direction, set where it covers no head. Null where no lens is wanted. */
-export function lensOf(layout: MapLayout, nowId: string | null, size = { width: 310, height: 254 }): Lens | null {
+export function lensOf(layout: MapLayout, nowId: string | null, size = { width: 340, height: 262 }): Lens | null {
   const now = layout.holes.find((h) => h.hole.id === nowId);
   if (!layout.small || !now) return null;
   const width = Math.min(size.width, layout.width);
@@ -38,7 +39,7 @@ function magnified(layout: MapLayout, now: PlacedHole, width: number, height: nu
     .map((h) => ({ h, d: Math.hypot(h.x - now.x, h.y - now.y) }))
     .sort((a, b) => a.d - b.d);
   const nearest = others[0]?.d ?? 1;
-  const scale = (RADIUS * (NOW_RING + 1) + 8) / nearest;
+  const scale = (RADIUS * (NOW_RING + 1.45) + 4) / nearest;
   const inside = others
     .slice(0, 6)
     .map(({ h }) => ({ hole: h.hole, x: (h.x - now.x) * scale, y: (h.y - now.y) * scale }));
@@ -63,13 +64,13 @@ function spread(holes: readonly PlacedHole[]): { left: number; top: number; widt
   return { left, top, width: right - left, height: bottom - top };
 }
 
-/** The free place nearest to the middle of the drawing, tried on a 10-unit grid. */
+/** The free place nearest to the middle of the drawing, tried on a grid of 5 units. */
 function lensPlace(layout: MapLayout, width: number, height: number): Point & { free: boolean } {
-  const clear = layout.radius + 12;
+  const clear = layout.radius + 9;
   const middle = { x: (layout.width - width) / 2, y: (layout.height - height) / 2 };
   let best: (Point & { d: number }) | null = null;
-  for (let x = 0; x <= layout.width - width; x += 10) {
-    for (let y = 0; y <= layout.height - height; y += 10) {
+  for (let x = EDGE; x <= layout.width - width - EDGE; x += 5) {
+    for (let y = EDGE; y <= layout.height - height - EDGE; y += 5) {
       const d = Math.hypot(x - middle.x, y - middle.y);
       if ((!best || d < best.d) && !covers(layout, x, y, width, height, clear)) best = { x, y, d };
     }
@@ -77,5 +78,11 @@ function lensPlace(layout: MapLayout, width: number, height: number): Point & { 
   return best ? { x: best.x, y: best.y, free: true } : { ...middle, free: false };
 }
 
-const covers = (layout: MapLayout, x: number, y: number, width: number, height: number, clear: number): boolean =>
-  layout.holes.some((h) => h.x > x - clear && h.x < x + width + clear && h.y > y - clear && h.y < y + height + clear);
+/** Whether a lens at x, y would lie on a head or on the words of a side. */
+function covers(layout: MapLayout, x: number, y: number, width: number, height: number, clear: number): boolean {
+  const gap = (p: Point): number =>
+    Math.hypot(Math.max(x - p.x, 0, p.x - x - width), Math.max(y - p.y, 0, p.y - y - height));
+  return layout.holes.some((h) => gap(h) < clear) || layout.sides.some((s) => gap(wordsMiddle(s)) < 32);
+}
+
+const wordsMiddle = (s: PlacedSide): Point => ({ x: s.x + { start: 28, middle: 0, end: -28 }[s.anchor], y: s.y });

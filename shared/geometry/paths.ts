@@ -90,7 +90,7 @@ export function arrowBetween(from: Point, to: Point, room: ArrowRoom): Arrow | n
   if (length < 1) return null;
   const blocked = room.others.some((p) => distanceToSegment(p, from, to) < room.head + 2);
   const free = length - room.clearFrom - room.clearTo;
-  return !blocked && free >= 24 ? straightArrow(from, to, length, room) : bowedArrow(from, to, length, room);
+  return !blocked && free >= 24 ? straightArrow(from, to, length, room) : bowedArrow(from, to, length, room, blocked);
 }
 
 function straightArrow(from: Point, to: Point, length: number, room: ArrowRoom): Arrow {
@@ -100,23 +100,27 @@ function straightArrow(from: Point, to: Point, length: number, room: ArrowRoom):
   return { path: `M${xy(start)}L${xy(tip)}`, tip, angle: (Math.atan2(u.y, u.x) * 180) / Math.PI };
 }
 
-/** Of the two sides the arrow can bow to, the one whose middle stands further from every other head. */
-function bowedArrow(from: Point, to: Point, length: number, room: ArrowRoom): Arrow {
+/** Of the two sides the arrow can bow to: the one free of heads, and of two free ones the one towards the middle. */
+function bowedArrow(from: Point, to: Point, length: number, room: ArrowRoom, blocked: boolean): Arrow {
   const heading = (Math.atan2(to.y - from.y, to.x - from.x) * 180) / Math.PI + 90;
-  const rise = Math.max(room.head * 2.2, length * 0.22) + room.clearFrom * 0.35;
+  const rise = blocked ? Math.max(room.head * 2.2, length * 0.22) + room.clearFrom * 0.35 : room.head * 0.8;
+  const middle = middleOf([from, to, ...room.others]);
   const sides = [1, -1].map((side) => {
-    const start = add(from, pointAt(room.clearFrom, heading + side * 48));
-    const tip = add(to, pointAt(room.clearTo, heading + 180 - side * 48));
-    const middle = { x: (start.x + tip.x) / 2, y: (start.y + tip.y) / 2 };
-    const control = add(middle, pointAt(rise, heading + side * 90));
-    const nearest = Math.min(Infinity, ...room.others.map((p) => Math.hypot(p.x - control.x, p.y - control.y)));
-    return { start, tip, control, nearest };
+    const start = add(from, pointAt(room.clearFrom, heading + side * 52));
+    const tip = add(to, pointAt(room.clearTo, heading + 180 - side * 58));
+    const control = add({ x: (start.x + tip.x) / 2, y: (start.y + tip.y) / 2 }, pointAt(rise, heading + side * 90));
+    const nearest = Math.min(room.head * 2, ...room.others.map((p) => Math.hypot(p.x - control.x, p.y - control.y)));
+    return { start, tip, control, worth: nearest - 0.02 * Math.hypot(control.x - middle.x, control.y - middle.y) };
   });
-  const best = sides.reduce((a, b) => (b.nearest > a.nearest + 0.5 ? b : a));
+  const best = sides.reduce((a, b) => (b.worth > a.worth ? b : a));
   const angle = (Math.atan2(best.tip.y - best.control.y, best.tip.x - best.control.x) * 180) / Math.PI;
   return { path: `M${xy(best.start)}Q${xy(best.control)} ${xy(best.tip)}`, tip: best.tip, angle };
 }
 
+const middleOf = (points: readonly Point[]): Point => ({
+  x: points.reduce((sum, p) => sum + p.x, 0) / points.length,
+  y: points.reduce((sum, p) => sum + p.y, 0) / points.length,
+});
 const add = (a: Point, b: Point): Point => ({ x: a.x + b.x, y: a.y + b.y });
 
 /** Distance of a point from the straight piece between two points. */
