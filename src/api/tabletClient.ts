@@ -1,10 +1,4 @@
-import type {
-  AnswerOf,
-  EndpointDefinition,
-  ParamsOf,
-  SentBodyOf,
-  SentQueryOf,
-} from '@shared/contracts/defineEndpoint';
+import type { AnswerOf, EndpointDefinition, ParamsOf, SentBodyOf, SentQueryOf } from '@shared/contracts/defineEndpoint';
 import { answerOf, type Answer } from './answer';
 
 /*

@@ -80,13 +80,6 @@ export function mergeCatalogue(kept: Catalogue, answer: CatalogueAnswer): Catalo
   };
 }
 
-/** What an answer changed that others must act on. */
-export interface CatalogueChange {
-  catalogue: Catalogue;
-  /** The server was set back to an older state: everything here is offered to it again (decision 9). */
-  epochChanged: boolean;
-}
-
 /**
  * Saves an answer whole, in one transaction. An answer that is older than what is kept (two requests crossed) changes
  * nothing, unless it is a full one.
@@ -95,15 +88,14 @@ export async function applyCatalogue(
   settings: Settings,
   clock: TabletClock,
   answer: CatalogueAnswer,
-): Promise<CatalogueChange> {
-  let epochChanged = false;
+): Promise<Catalogue> {
   const catalogue = await settings.update('catalogue', (kept = emptyCatalogue()) => {
-    epochChanged = kept.epoch !== '' && kept.epoch !== answer.epoch;
-    const isOlder = !answer.full && (epochChanged || answer.cursor < kept.cursor);
+    const otherEpoch = kept.epoch !== '' && kept.epoch !== answer.epoch;
+    const isOlder = !answer.full && (otherEpoch || answer.cursor < kept.cursor);
     return isOlder ? kept : mergeCatalogue(kept, answer);
   });
   await noteContact(settings, clock, Date.parse(answer.now));
-  return { catalogue, epochChanged };
+  return catalogue;
 }
 
 /** Writes down that the server was heard and what its clock said (decision 10, fault 10). */

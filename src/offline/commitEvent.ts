@@ -43,7 +43,7 @@ function putAll(transaction: IDBTransaction, commit: EventCommit): void {
   transaction.objectStore('outbox').add(waiting);
   transaction.objectStore('heads').put(head);
   for (const blob of commit.blobs) {
-    const held: BlobRow = { ...blob, walk: head.walk, waiting: 1, at };
+    const held: BlobRow = { ...blob, walk: head.walk, waiting: 1, refused: null, at };
     transaction.objectStore('blobs').put(held);
   }
   if (!commit.document) return;

@@ -37,7 +37,12 @@ const deps = (more: Partial<PinDeps> = {}): PinDeps => ({
   iterations: 10,
   ...more,
 });
-const yes = () => ({ kind: 'done', status: 200, value: { person: PERSON, pinVersion: 1, at: new Date(clock.now()).toISOString() } }) as const;
+const yes = () =>
+  ({
+    kind: 'done',
+    status: 200,
+    value: { person: PERSON, pinVersion: 1, at: new Date(clock.now()).toISOString() },
+  }) as const;
 const no = { kind: 'refused', refusal: { status: 403, code: 'pin.wrong', message: '', details: {} } } as const;
 const nobody = { kind: 'unreachable' } as const;
 
@@ -89,7 +94,10 @@ describe('signing in with a PIN (decision 10)', () => {
   it('does not even compare while the delay runs, whether the PIN is right or not', async () => {
     await firstSignIn();
     for (let i = 0; i < 3; i++) await signInByPin(deps(), ann, '000001');
-    expect(await signInByPin(deps(), ann, '482915')).toEqual({ ok: false, error: { code: 'pin.wait', params: { seconds: 5 } } });
+    expect(await signInByPin(deps(), ann, '482915')).toEqual({
+      ok: false,
+      error: { code: 'pin.wait', params: { seconds: 5 } },
+    });
     clock.pass(5000);
     expect((await signInByPin(deps(), ann, '482915')).ok).toBe(true);
   });
@@ -142,7 +150,10 @@ describe('signing in with a PIN (decision 10)', () => {
     answer = no;
     expect(await signInByPin(deps(), ann, '000001')).toMatchObject({ error: { code: 'pin.wrong' } });
     answer = { kind: 'refused', refusal: { status: 429, code: 'pin.wait', message: '', details: { seconds: 40 } } };
-    expect(await signInByPin(deps(), ann, '000001')).toEqual({ ok: false, error: { code: 'pin.wait', params: { seconds: 40 } } });
+    expect(await signInByPin(deps(), ann, '000001')).toEqual({
+      ok: false,
+      error: { code: 'pin.wait', params: { seconds: 40 } },
+    });
   });
 
   it('keeps neither the PIN nor a key that can be read out', async () => {
@@ -176,7 +187,10 @@ describe('a PIN that is sealed into a walk', () => {
   it('of somebody new to this tablet is sealed unchecked while there is no server', async () => {
     answer = nobody;
     expect(await checkPinForSeal(deps(), ann, '482915')).toEqual({ ok: true, value: 'later' });
-    expect(await checkPinForSeal(deps({ bearer: () => Promise.resolve(null) }), ann, '1')).toEqual({ ok: true, value: 'later' });
+    expect(await checkPinForSeal(deps({ bearer: () => Promise.resolve(null) }), ann, '1')).toEqual({
+      ok: true,
+      value: 'later',
+    });
   });
 
   it('of somebody new to this tablet is checked by the server where there is one', async () => {
@@ -189,6 +203,8 @@ describe('a PIN that is sealed into a walk', () => {
 
 describe('the delay', () => {
   it('doubles from five seconds to a quarter of an hour', () => {
-    expect([0, 2, 3, 4, 5, 10, 11, 50].map(delayAfter)).toEqual([0, 0, 5000, 10_000, 20_000, 640_000, 900_000, 900_000]);
+    expect([0, 2, 3, 4, 5, 10, 11, 50].map(delayAfter)).toEqual([
+      0, 0, 5000, 10_000, 20_000, 640_000, 900_000, 900_000,
+    ]);
   });
 });

@@ -62,7 +62,11 @@ async function needOfServer(deps: PinDeps, verifier: PinVerifier | null): Promis
   let latest = now;
   const record = await deps.settings.update('clock', (old) => {
     latest = old?.latestSeen ?? now;
-    return { lastContact: old?.lastContact ?? 0, latestSeen: Math.max(latest, now), serverOffset: old?.serverOffset ?? 0 };
+    return {
+      lastContact: old?.lastContact ?? 0,
+      latestSeen: Math.max(latest, now),
+      serverOffset: old?.serverOffset ?? 0,
+    };
   });
   if (!verifier) return 'pin.firstTime';
   if (now < latest - CLOCK_TOLERANCE_MS) return 'pin.clockSetBack';

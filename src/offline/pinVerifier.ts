@@ -14,7 +14,7 @@ const HMAC = { name: 'HMAC', hash: 'SHA-256' } as const;
 async function pinKeyOf(settings: Settings): Promise<CryptoKey> {
   const kept = await settings.get('pinKey');
   if (kept) return kept;
-  const made = await crypto.subtle.generateKey(HMAC, false, ['sign', 'verify']);
+  const made = (await crypto.subtle.generateKey(HMAC, false, ['sign', 'verify'])) as CryptoKey;
   return settings.update('pinKey', (old) => old ?? made);
 }
 

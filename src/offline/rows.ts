@@ -55,6 +55,8 @@ export interface BlobRow {
   contentType: string;
   bytes: ArrayBuffer;
   waiting: 0 | 1;
+  /** Code of the server's refusal; it is not sent again until somebody asks. */
+  refused: string | null;
   at: string;
 }
 

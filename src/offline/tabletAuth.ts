@@ -43,7 +43,10 @@ export interface Bearer {
 }
 
 /** The device key, made on first use and saved before it is shown to anybody. */
-export async function deviceKeyOf({ settings, record }: Pick<TabletAuthDeps, 'settings' | 'record'>): Promise<DeviceKey> {
+export async function deviceKeyOf({
+  settings,
+  record,
+}: Pick<TabletAuthDeps, 'settings' | 'record'>): Promise<DeviceKey> {
   const kept = await settings.get('deviceKey');
   if (kept) return kept;
   const made = await makeDeviceKey(record);
@@ -103,10 +106,7 @@ export async function enrolDemoTablet(
 }
 
 /** A bearer for a signed challenge: the tablet's own doing, whoever is signed in (decision 9, fault 24). */
-export async function tokenFor(
-  deps: TabletAuthDeps,
-  identity: TabletIdentity,
-): Promise<Answer<Bearer>> {
+export async function tokenFor(deps: TabletAuthDeps, identity: TabletIdentity): Promise<Answer<Bearer>> {
   const who = { shop: identity.shop.id, tablet: identity.tablet.id };
   const asked = await deps.client.call<typeof challenge>({ method: 'POST', path: '/api/tablets/challenge', body: who });
   if (asked.kind !== 'done') return asked;

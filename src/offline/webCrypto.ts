@@ -1,5 +1,5 @@
-import { recordCryptoFrom, type SubtleCryptoLike } from '@shared/record/recordCryptoFrom';
+import { recordCryptoFrom } from '@shared/record/recordCryptoFrom';
 import type { RecordCrypto } from '@shared/record/crypto';
 
 /** Hashing and verifying of the record over this browser's Web Crypto. */
-export const webRecordCrypto = (): RecordCrypto => recordCryptoFrom(crypto.subtle as SubtleCryptoLike);
+export const webRecordCrypto = (): RecordCrypto => recordCryptoFrom(crypto.subtle);

@@ -61,7 +61,7 @@ function watchRequests(transaction: Abortable, control: Control): void {
   transaction.objectStore = (name: string) => {
     const store = open(name);
     for (const method of ['add', 'put', 'get', 'getAll', 'getAllKeys', 'delete', 'openCursor'] as const) {
-      const real = FDBObjectStore.prototype[method] as (...args: unknown[]) => IDBRequest;
+      const real = Reflect.get(FDBObjectStore.prototype, method) as (...args: unknown[]) => IDBRequest;
       Object.defineProperty(store, method, {
         configurable: true,
         value: (...args: unknown[]) => {
@@ -112,7 +112,7 @@ function watchCompletion(transaction: Abortable, control: Control): void {
 
 function watchDatabase(database: IDBDatabase, control: Control): void {
   const life = control.life;
-  const begin = (FDBDatabase.prototype.transaction as IDBDatabase['transaction']).bind(database);
+  const begin = FDBDatabase.prototype.transaction.bind(database);
   Object.defineProperty(database, 'transaction', {
     configurable: true,
     value: (...args: Parameters<IDBDatabase['transaction']>) => {
