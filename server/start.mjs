@@ -121,6 +121,7 @@ const main = async () => {
   const closers = [];
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
     process.on(signal, () => {
+      if (isStopping) return; // npm passes on the Ctrl-C that the terminal sent us as well
       isStopping = true;
       void closeAll(closers).then(() => process.exit(0));
     });

@@ -99,6 +99,8 @@ const runAll = async (
   return results;
 };
 
+let isStopping = false;
+
 const main = async () => {
   const chosen = chosenStages();
   ensureNode();
@@ -109,6 +111,8 @@ const main = async () => {
   if (cluster) process.env[clusterVariable] = JSON.stringify(cluster.settings);
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
     process.on(signal, () => {
+      if (isStopping) return;
+      isStopping = true;
       stopRunning();
       void Promise.resolve(cluster?.close()).then(() => process.exit(130));
     });
