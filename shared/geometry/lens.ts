@@ -9,27 +9,28 @@ export interface Lens extends Point {
   radius: number;
   /** Places inside the lens, measured from its top left corner. */
   holes: PlacedHole[];
-  /** False where no free place was found: the lens then covers part of the map. */
-  free: boolean;
 }
 
 const RADIUS = 30;
 const CAPTION = 34;
 const EDGE = 4;
 
-/** Lens for the hole `nowId`: magnified true to direction, set where it covers no head. Null where no lens is wanted. */
-export function lensOf(layout: MapLayout, nowId: string | null, size = { width: 340, height: 262 }): Lens | null {
+/** Sizes tried in turn, until one finds a free place. */
+const SIZES = [
+  { width: 320, height: 256 },
+  { width: 230, height: 256 },
+  { width: 320, height: 164 },
+];
+
+/** Lens for the hole `nowId`: magnified true to direction, set where it covers no head. Null where none is wanted. */
+export function lensOf(layout: MapLayout, nowId: string | null): Lens | null {
   const now = layout.holes.find((h) => h.hole.id === nowId);
   if (!layout.small || !now) return null;
-  const width = Math.min(size.width, layout.width);
-  const height = Math.min(size.height, layout.height);
-  return {
-    width,
-    height,
-    radius: RADIUS,
-    holes: magnified(layout, now, width, height),
-    ...lensPlace(layout, width, height),
-  };
+  for (const { width, height } of SIZES) {
+    const place = lensPlace(layout, width, height);
+    if (place) return { width, height, radius: RADIUS, holes: magnified(layout, now, width, height), ...place };
+  }
+  return null;
 }
 
 /** Nearest neighbours, as many as fit without touching each other or the edge. */
@@ -55,17 +56,19 @@ function magnified(layout: MapLayout, now: PlacedHole, width: number, height: nu
   return [{ hole: now.hole, x: width / 2, y: (height - CAPTION) / 2 }];
 }
 
+/** Room the chosen heads take up: the ring of the current one, arcs beside and ticks above the others. */
 function spread(holes: readonly PlacedHole[]): { left: number; top: number; width: number; height: number } {
-  const reach = (i: number): number => RADIUS * (i === 0 ? NOW_RING : 1.45) + 8;
-  const left = Math.min(...holes.map((h, i) => h.x - reach(i)));
-  const right = Math.max(...holes.map((h, i) => h.x + reach(i)));
-  const top = Math.min(...holes.map((h, i) => h.y - reach(i)));
-  const bottom = Math.max(...holes.map((h, i) => h.y + reach(i)));
+  const beside = (i: number): number => RADIUS * (i === 0 ? NOW_RING : 1.2) + 6;
+  const above = (i: number): number => RADIUS * (i === 0 ? NOW_RING : 1.45) + 8;
+  const left = Math.min(...holes.map((h, i) => h.x - beside(i)));
+  const right = Math.max(...holes.map((h, i) => h.x + beside(i)));
+  const top = Math.min(...holes.map((h, i) => h.y - above(i)));
+  const bottom = Math.max(...holes.map((h, i) => h.y + beside(i)));
   return { left, top, width: right - left, height: bottom - top };
 }
 
 /** The free place nearest to the middle of the drawing, tried on a grid of 5 units. */
-function lensPlace(layout: MapLayout, width: number, height: number): Point & { free: boolean } {
+function lensPlace(layout: MapLayout, width: number, height: number): Point | null {
   const clear = layout.radius + 9;
   const middle = { x: (layout.width - width) / 2, y: (layout.height - height) / 2 };
   let best: (Point & { d: number }) | null = null;
@@ -75,7 +78,7 @@ function lensPlace(layout: MapLayout, width: number, height: number): Point & { 
       if ((!best || d < best.d) && !covers(layout, x, y, width, height, clear)) best = { x, y, d };
     }
   }
-  return best ? { x: best.x, y: best.y, free: true } : { ...middle, free: false };
+  return best && { x: best.x, y: best.y };
 }
 
 /** Whether a lens at x, y would lie on a head or on the words of a side. */

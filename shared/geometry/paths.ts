@@ -109,8 +109,9 @@ function bowedArrow(from: Point, to: Point, length: number, room: ArrowRoom, blo
     const start = add(from, pointAt(room.clearFrom, heading + side * 52));
     const tip = add(to, pointAt(room.clearTo, heading + 180 - side * 58));
     const control = add({ x: (start.x + tip.x) / 2, y: (start.y + tip.y) / 2 }, pointAt(rise, heading + side * 90));
-    const nearest = Math.min(room.head * 2, ...room.others.map((p) => Math.hypot(p.x - control.x, p.y - control.y)));
-    return { start, tip, control, worth: nearest - 0.02 * Math.hypot(control.x - middle.x, control.y - middle.y) };
+    const top = { x: (start.x + tip.x + 2 * control.x) / 4, y: (start.y + tip.y + 2 * control.y) / 4 };
+    const nearest = Math.min(room.head * 1.3, ...room.others.map((p) => Math.hypot(p.x - top.x, p.y - top.y)));
+    return { start, tip, control, worth: nearest - 0.02 * Math.hypot(top.x - middle.x, top.y - middle.y) };
   });
   const best = sides.reduce((a, b) => (b.worth > a.worth ? b : a));
   const angle = (Math.atan2(best.tip.y - best.control.y, best.tip.x - best.control.x) * 180) / Math.PI;
