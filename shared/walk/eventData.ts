@@ -255,6 +255,9 @@ export interface ReadingTaken extends ReadingEntry {
 export interface ReadingVoided {
   reading: number;
   reason: string;
+  /** A keyed or streamed reading is voided only by a supervisor's own decision. */
+  seal?: Seal;
+  renews?: number;
 }
 /** `reading.elsewhere`: a physical fact of a branch that was not chosen (W11). */
 export interface ReadingElsewhere extends ReadingEntry {

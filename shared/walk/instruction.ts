@@ -22,16 +22,18 @@ import {
   directionOf,
   fastenerOf,
   holeById,
+  isSpent,
+  isStriped,
   looseningOrder,
   makesUsed,
   sameSlot,
   slotKey,
   takesReading,
-  usedFrom,
   walkPasses,
   windowOf,
 } from './slots';
 import type { Rework, TakenWrench, WalkState } from './state';
+import { withUse } from './evolve/change';
 
 /** How the figure of the coming reading is to be taken. */
 export type PullMode = 'fresh' | 'pullAgain' | 'retype' | 'finishByTotal' | 'finishByStripe';
@@ -96,6 +98,7 @@ export function needOf(state: WalkState, slot: SlotRef, stage: Stage): WrenchNee
     kind,
     window: windowOf(state.procedure, stage, slot.hole),
     direction: directionOf(state.procedure, stage, slot.hole),
+    policy: state.opened?.policy.judgement ?? 'simple',
     ...(drive === undefined ? {} : { drive }),
     ...(monitor ? { endTorqueHigh: { value: monitor.high, unit: monitor.unit } } : {}),
   };
@@ -229,10 +232,7 @@ function jointReworkInstruction(state: WalkState, rework: Extract<Rework, { kind
 /** A used single-use fastener never goes back in (R3); before final assembly old ones may (W1). */
 export function newPartNeeded(state: WalkState, hole: HoleId, rework: Rework): boolean {
   if (rework.kind === 'hole' && rework.way === 'replace') return true;
-  const spent = state.holes[hole]?.used === true && usedFrom(state, hole) !== null;
-  return (
-    spent && state.opened?.purpose === 'finalAssembly' && fastenerOf(state.procedure, hole).reuse.kind === 'singleUse'
-  );
+  return isSpent(state, hole);
 }
 
 function fitInstruction(state: WalkState, hole: HoleId, rework: Rework): Instruction {
@@ -326,11 +326,12 @@ export function workInstruction(state: WalkState, now: Now): Instruction {
 /** Ways to go on after an interruption when the stage was begun (W9). */
 export function resumeWays(state: WalkState, slot: SlotRef, stage: Stage): ResumeWay[] {
   const jointOnly = walkPasses(state).find((pass) => pass.id === slot.pass)?.rework.allows === 'joint';
-  const used = state.holes[slot.hole]?.used === true || makesUsed(state, slot);
-  const spent = used && state.opened?.purpose === 'finalAssembly';
+  // A turn that may have begun uses the fastener (R3): what is asked is whether it would then be spent.
+  const counts = stage.kind === 'turn' && makesUsed(state, slot);
+  const spent = isSpent(counts ? withUse(state, slot.hole) : state, slot.hole);
   const renewing: ResumeWay[] = jointOnly ? ['restartJoint'] : spent ? ['replace'] : ['restart', 'replace'];
   if (stage.kind !== 'turn') return ['asInstructed', ...renewing];
-  return ['ownTotal', ...(state.stripesPainted ? (['stripe'] as const) : []), ...renewing];
+  return ['ownTotal', ...(isStriped(state, slot.hole) ? (['stripe'] as const) : []), ...renewing];
 }
 
 function lookInstruction(state: WalkState, now: Now): Instruction {

@@ -1,13 +1,11 @@
-import { turnUncertainty } from '../calibration/turnUncertainty';
-import { lastDigitOf, torqueUncertainty } from '../calibration/uncertainty';
 import { judge, judgeSetting, type Verdict } from '../judge/verdict';
 import { addQuantities, compareQuantities, type Quantity } from '../quantity/quantity';
-import { decimalToRational, toNumber } from '../quantity/rational';
 import { unitKind } from '../quantity/unit';
 import { targetOf, type Window } from '../quantity/window';
 import type { Stage } from '../procedure/procedure';
 import type { ReadingEntry } from './events';
 import type { Placement } from './placement';
+import { torqueReadingUncertainty, turnReadingUncertainty } from './readingUncertainty';
 import { directionOf, stageOf, windowOf } from './slots';
 import type { TakenWrench, WalkState } from './state';
 
@@ -19,10 +17,20 @@ export interface Judged {
   endVerdict?: Verdict;
 }
 
-const numberOf = (text: string): number => toNumber(decimalToRational(text));
-
 const unsigned = (quantity: Quantity): Quantity =>
   quantity.value.startsWith('-') ? { ...quantity, value: quantity.value.slice(1) } : quantity;
+
+/** Whether a turn comes on top of what stands, or is the whole of it. */
+function addsToStanding(entry: ReadingEntry, placement: Placement): boolean {
+  // A wrench zeroed for *pull again* knows nothing of what stands; the stripe shows the whole turn.
+  const pulledOn = placement.before?.status === 'partial' && entry.source !== 'marked';
+  return placement.kind === 'adds' || entry.shows !== 'total' || pulledOn;
+}
+
+/** All the pulls that made up what now stands: their errors add straight (J3). */
+export function pullsInAll(entry: ReadingEntry, placement: Placement): number {
+  return entry.pulls + (addsToStanding(entry, placement) ? (placement.before?.pulls ?? 0) : 0);
+}
 
 /** Turns add to what stands; a total since zero replaces it; of two torques the higher stands (R1, R5, W9). */
 function totalOf(entry: ReadingEntry, placement: Placement): Quantity {
@@ -32,33 +40,10 @@ function totalOf(entry: ReadingEntry, placement: Placement): Quantity {
     const higher = placement.kind === 'adds' && standing !== null && compareQuantities(standing, value) > 0;
     return higher ? standing : value;
   }
-  // A wrench zeroed for *pull again* knows nothing of what stands; the stripe shows the whole turn.
-  const pulledOn = placement.before?.status === 'partial' && entry.source !== 'marked';
-  const adds = placement.kind === 'adds' || entry.shows !== 'total' || pulledOn;
-  return adds && standing !== null ? addQuantities(standing, value) : value;
+  return addsToStanding(entry, placement) && standing !== null ? addQuantities(standing, value) : value;
 }
 
-function torqueU(value: Quantity, wrench: TakenWrench, direction: 'cw' | 'ccw'): number | undefined {
-  const limit = wrench.wrench.accuracy[direction];
-  if (limit === null) return undefined;
-  return torqueUncertainty({
-    torque: numberOf(value.value),
-    classLimitPercent: numberOf(limit),
-    resolution: numberOf(wrench.wrench.resolution.torque ?? '0'),
-    lastDigit: lastDigitOf(value.value),
-  });
-}
-
-function turnU(entry: ReadingEntry, wrench: TakenWrench): number | undefined {
-  const { turnAccuracy, resolution } = wrench.wrench;
-  if (turnAccuracy === null || entry.source === 'gauged' || entry.source === 'marked') return undefined;
-  return turnUncertainty({
-    pulls: entry.pulls,
-    accuracyDeg: numberOf(turnAccuracy),
-    resolutionDeg: numberOf(resolution.angle ?? '1'),
-  });
-}
-
+/** Without a known uncertainty there is no guard to keep: gauged, marked and clicked ones are judged by the limits (J4, J5). */
 function verdictOf(state: WalkState, value: Quantity, window: Window | null, u: number | undefined): Verdict {
   if (!window) return 'in';
   const policy = state.opened?.policy.judgement ?? 'simple';
@@ -79,7 +64,7 @@ function endVerdictOf(state: WalkState, entry: ReadingEntry, stage: Stage): Verd
   if (!window) return undefined;
   const wrench = entry.wrench === null ? undefined : state.wrenches[entry.wrench];
   const direction = directionOf(state.procedure, stage, entry.hole);
-  const u = wrench && torqueU(entry.endTorque, wrench, direction);
+  const u = wrench && torqueReadingUncertainty(entry.endTorque, wrench.wrench, direction);
   return verdictOf(state, entry.endTorque, window, u);
 }
 
@@ -93,7 +78,11 @@ export function judgeReading(state: WalkState, entry: ReadingEntry, placement: P
   if (entry.source === 'clicked') return { window, total, verdict: clickedVerdict(total, window, wrench) };
   const direction = directionOf(state.procedure, stage, entry.hole);
   const isTurn = unitKind(total.unit) === 'angle';
-  const u = wrench && (isTurn ? turnU(entry, wrench) : torqueU(total, wrench, direction));
+  const u =
+    wrench &&
+    (isTurn
+      ? turnReadingUncertainty(pullsInAll(entry, placement), wrench.wrench, entry.source)
+      : torqueReadingUncertainty(total, wrench.wrench, direction));
   const endVerdict = endVerdictOf(state, entry, stage);
   const judged = { window, total, verdict: verdictOf(state, total, window, u) };
   return endVerdict === undefined ? judged : { ...judged, endVerdict };

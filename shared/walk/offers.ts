@@ -3,7 +3,7 @@ import type { HoleId, Pass, Stage } from '../procedure/procedure';
 import type { Deviation } from './deviation';
 import { standingSettling } from './deviation';
 import type { Choice, SlotRef } from './events';
-import { fastenerOf, slotKey, slotsOfHole, stageOf, windowOf } from './slots';
+import { isSpent, slotKey, slotsOfHole, stageOf, windowOf } from './slots';
 import type { ReadingRecord, WalkState } from './state';
 
 /** Why a choice is not offered: shown under the choices, because "no" wants a reason. */
@@ -84,10 +84,8 @@ function renewal({ state, deviation, pass }: Case): Offers {
       ],
     };
   }
-  const { reuse } = fastenerOf(state.procedure, hole);
-  const spent =
-    reuse.kind !== 'reusable' && state.holes[hole]?.used === true && state.opened?.purpose === 'finalAssembly';
-  if (spent) return { ...none, offered: ['replace'], notOffered: [{ choice: 'restart', why: 'singleUseUsed' }] };
+  if (isSpent(state, hole))
+    return { ...none, offered: ['replace'], notOffered: [{ choice: 'restart', why: 'singleUseUsed' }] };
   return { ...none, offered: ['restart', 'replace'] };
 }
 
@@ -231,11 +229,14 @@ export function offersFor(state: WalkState, deviation: Deviation): Offers {
   return { ...offers, mayVoid: reading !== null && typed && mayVoid(state, reading) };
 }
 
-/** R2: a settling may still be changed while nothing was loosened for it; held ones wait for a supervisor. */
+/** R2: a settling may still be changed while nothing was loosened or pulled for it; held ones wait for a supervisor. */
 export function settlingOpen(state: WalkState, deviation: Deviation): boolean {
   if (deviation.status === 'open' || deviation.status === 'held') return true;
   const last = standingSettling(deviation);
   if (deviation.status !== 'settled' || !last) return false;
+  const { slot } = deviation;
+  if (last.choice === 'pullAgain')
+    return slot !== null && state.holes[slot.hole]?.slots[slotKey(slot)]?.status === 'partial';
   const rework = state.reworks.find((candidate) => candidate.deviation === deviation.id);
   return rework?.phase === 'loosen' && !state.loosened.some((loosened) => loosened.seq > last.seq);
 }

@@ -1,5 +1,3 @@
-import { lastDigitOf, torqueUncertainty } from '../calibration/uncertainty';
-import { turnUncertainty } from '../calibration/turnUncertainty';
 import { siblingNotes, type SiblingNote } from '../judge/siblings';
 import { groupBy } from '../kernel/groupBy';
 import { msBetween } from '../kernel/time';
@@ -7,6 +5,7 @@ import { decimalToRational, toNumber } from '../quantity/rational';
 import type { Quantity } from '../quantity/quantity';
 import type { Deviation } from './deviation';
 import type { Source } from './events';
+import { torqueReadingUncertainty } from './readingUncertainty';
 import { directionOf, holeById, slotKey, stageOf } from './slots';
 import type { ReadingRecord, WalkState } from './state';
 
@@ -74,20 +73,7 @@ function uncertaintyOf(state: WalkState, record: ReadingRecord, value: Quantity)
   const wrench = record.data.wrench === null ? undefined : state.wrenches[record.data.wrench]?.wrench;
   const stage = stageOf(state, record.data)?.stage;
   if (!wrench || !stage) return 0;
-  if (value.unit === 'deg') {
-    const accuracyDeg = numberOf(wrench.turnAccuracy ?? '0');
-    return turnUncertainty({
-      pulls: record.data.pulls,
-      accuracyDeg,
-      resolutionDeg: numberOf(wrench.resolution.angle ?? '1'),
-    });
-  }
-  return torqueUncertainty({
-    torque: numberOf(value.value),
-    classLimitPercent: numberOf(wrench.accuracy[directionOf(state.procedure, stage, record.data.hole)] ?? '0'),
-    resolution: numberOf(wrench.resolution.torque ?? '0'),
-    lastDigit: lastDigitOf(value.value),
-  });
+  return torqueReadingUncertainty(value, wrench, directionOf(state.procedure, stage, record.data.hole)) ?? 0;
 }
 
 /** J6 compares the end torque of a turn, and the turn of a torque stage where it was measured; clicked readings never. */

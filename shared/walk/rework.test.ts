@@ -99,6 +99,20 @@ describe('R2, R3 restart and replace', () => {
   });
 });
 
+describe('R3 limited reuse', () => {
+  const head = aHead();
+  const limited = aHead({ fasteners: [{ ...head.fasteners[0]!, reuse: { kind: 'limited', most: 2 } }] });
+
+  it('lets a fastener be restarted until it was used as often as it may be', () => {
+    const walk = new Walk(limited).opened().prepared(0).to('p3', 'h1').pulls('104');
+    expect(walk.offered).toContain('restart');
+    walk.settles('restart').until((now) => now.kind === 'pull');
+    walk.to('p3', 'h1').pulls('104');
+    expect(walk.state.holes.h1?.uses).toBe(2);
+    expect(walk.offered).toEqual(['replace', 'accept', 'hold']);
+  });
+});
+
 describe('R4 over, yet below the next torque target', () => {
   it('goes on, noted', () => {
     const walk = aWalk().pulls('25');
@@ -273,6 +287,14 @@ describe('R10 typing errors', () => {
     const first = walk.state.seq;
     walk.pulls('20');
     expect(walk.tries('reading.voided', { reading: first, reason: 'r' })?.code).toBe('notVoidable');
+  });
+
+  it('lets only a supervisor void what a wrench sent', () => {
+    const walk = aWalk().pulls('25', { source: 'keyed' }).as('sup', 'supervisor');
+    const reading = walk.state.seq;
+    expect(walk.tries('reading.voided', { reading, reason: 'r' })?.code).toBe('sealMissing');
+    walk.does('reading.voided', { reading, reason: 'key bounced', seal: 's' });
+    expect(walk.state.readings[0]?.status).toBe('voided');
   });
 
   it('is for typed readings only', () => {

@@ -1,6 +1,6 @@
 import type { HoleId, Pass, PartNeed, Stage, Step } from '../procedure/procedure';
 import type { SlotRef } from './events';
-import { slotKey, walkPasses } from './slots';
+import { isStriped, slotKey, walkPasses } from './slots';
 import type { WalkState } from './state';
 
 /** One thing of the walk that is still to do, in route order. */
@@ -57,9 +57,13 @@ export function missingParts(state: WalkState): MissingPart[] {
   return [...gaskets, ...fasteners].filter((part) => part.have < part.need);
 }
 
+/** A fastener that was put in since the stripes were painted has none: they are painted again (W9). */
+const allStriped = (state: WalkState): boolean => Object.keys(state.holes).every((hole) => isStriped(state, hole));
+
 /** Whether a step has been done and answered as it should. */
 export function stepDone(state: WalkState, step: Step, hole: HoleId | null): boolean {
   const record = state.steps[stepKey(step.id, hole)];
+  if (step.paintsStripes && !allStriped(state)) return false;
   return record !== undefined && record.answer === 'yes' && record.inLimits !== false;
 }
 

@@ -140,6 +140,18 @@ export function usedFrom(state: WalkState, hole: HoleId): string | null {
   return first ? `${first.pass.id}/${first.stage.id}` : null;
 }
 
+/** Whether the fastener may not be tightened once more: single-use and used, or used as often as its type allows (R3). */
+export function isSpent(state: WalkState, hole: HoleId): boolean {
+  const { reuse } = fastenerOf(state.procedure, hole);
+  const found = state.holes[hole];
+  if (!found || reuse.kind === 'reusable' || state.opened?.purpose !== 'finalAssembly') return false;
+  return reuse.kind === 'singleUse' ? found.used : found.uses >= reuse.most;
+}
+
+/** Whether a paint stripe shows how far this very fastener has turned (W9). */
+export const isStriped = (state: WalkState, hole: HoleId): boolean =>
+  state.striped[hole] !== undefined && state.striped[hole] === state.holes[hole]?.attempt;
+
 /** Whether taking this slot (or one after it) makes the fastener used (R3). */
 export function makesUsed(state: WalkState, slot: SlotRef): boolean {
   const from = usedFrom(state, slot.hole);

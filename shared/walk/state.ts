@@ -23,6 +23,8 @@ export interface SlotOutcome {
   /** Sequence number of the reading (or `stage.done`) that stands. */
   seq: number;
   total: Quantity | null;
+  /** Pulls that made up the total (J3). */
+  pulls?: number;
   verdict: Verdict | null;
   moved?: boolean;
   outOfOrder?: boolean;
@@ -33,8 +35,12 @@ export interface HoleState {
   attempt: number;
   /** 1 for the first fastener in this hole, 2 after one replacement … */
   fastenerNo: number;
-  /** Counts as used (R3). */
+  /** Counts as used (R3): in this attempt or an earlier one. */
   used: boolean;
+  /** How often this fastener was used: once in each attempt that came to its used stage (limited reuse, R3). */
+  uses: number;
+  /** Whether this attempt has counted. */
+  counted: boolean;
   /** False while the fastener is out of the hole. */
   present: boolean;
   slots: Record<string, SlotOutcome>;
@@ -126,7 +132,8 @@ export interface WalkState {
   stopped: { order: string; reason: string } | null;
   voided: { reason: string; seq: number } | null;
   steps: Record<string, StepDone & { seq: number }>;
-  stripesPainted: boolean;
+  /** Attempt of each hole's fastener when stripes were last painted: a new fastener has none yet (W9). */
+  striped: Record<HoleId, number>;
   parts: (PartTaken & { seq: number })[];
   /** New fasteners drawn per fastener type beyond those of the first fitting. */
   drawn: Record<string, number>;
@@ -164,6 +171,8 @@ const freshHole = (): HoleState => ({
   attempt: 1,
   fastenerNo: 1,
   used: false,
+  uses: 0,
+  counted: false,
   present: true,
   slots: {},
   catchUpTo: null,
@@ -183,7 +192,7 @@ const nothingYet: Omit<WalkState, 'procedure' | 'procedureHash' | 'holes'> = {
   stopped: null,
   voided: null,
   steps: {},
-  stripesPainted: false,
+  striped: {},
   parts: [],
   drawn: {},
   restarts: 0,

@@ -118,6 +118,40 @@ describe('W9 interruption', () => {
   });
 });
 
+describe('W9 stripes', () => {
+  it('paints a new bolt its stripe before its turn', () => {
+    const paint = {
+      id: 'paint',
+      place: { at: 'afterPass', pass: 'p2' },
+      kind: 'do',
+      text: 'Paint',
+      paintsStripes: true,
+    } as const;
+    const walk = new Walk(aHead({ steps: [paint] })).opened().prepared().parts('bolt', 1).to('p3', 'h2').pulls('104');
+    walk.settles('replace').to('p2', 'h2').pulls('40');
+    expect(walk.instruction).toMatchObject({ kind: 'step', step: { id: 'paint' } });
+    walk.boot = 'boot-2';
+    walk.does('walk.resumed', { cause: 'killed', begun: 'notBegun', way: 'asInstructed', at: null }).stepsDone();
+    walk.boot = 'boot-3';
+    expect(walk.instruction).toMatchObject({ kind: 'lookAtWork', ways: ['ownTotal', 'stripe', 'replace'] });
+  });
+});
+
+describe('R5 and W9 together', () => {
+  it('still finishes the begun bolt by its own total after another one was tightened', () => {
+    const walk = aWalk().to('p3', 'h1');
+    walk.boot = 'boot-2';
+    walk.does('walk.resumed', {
+      cause: 'killed',
+      begun: 'begun',
+      way: 'ownTotal',
+      at: { pass: 'p3', hole: 'h1', stage: 's' },
+    });
+    walk.does('reading.taken', { ...walk.entry('90'), hole: 'h3', insteadOf: 'h1' });
+    expect(walk.instruction).toMatchObject({ kind: 'pull', mode: 'finishByTotal', slot: { hole: 'h1' } });
+  });
+});
+
 describe('W12 signatures', () => {
   const finished = (): Walk => aWalk().until((now) => now.kind === 'sign');
   const signed = (): Walk => finished().does('walk.signed', { meaning: 'tightenedAsRecorded', seal: 's' });

@@ -8,9 +8,9 @@ import { judgeReading } from '../judgeReading';
 import { mayVoid } from '../offers';
 import { placeReading } from '../placement';
 import { refusal, type Refusal } from '../refusal';
-import { directionOf, holeById, labelOf, sameSlot, stageOf } from '../slots';
+import { directionOf, holeById, isStriped, labelOf, sameSlot, stageOf } from '../slots';
 import type { WalkState } from '../state';
-import { instructionFor, needsHands, needsRight, type CommandOf } from './guards';
+import { instructionFor, needsHands, needsSupervisor, type CommandOf } from './guards';
 
 const slotOf = (data: SlotRef): SlotRef => ({ pass: data.pass, hole: data.hole, stage: data.stage, round: data.round });
 
@@ -88,7 +88,7 @@ function wrenchRefusal(
   { slot, stage }: PullInstruction,
   at: string,
 ): Refusal | null {
-  if (data.source === 'marked') return state.stripesPainted ? null : refusal('noStripes');
+  if (data.source === 'marked') return isStriped(state, data.hole) ? null : refusal('noStripes');
   const taken = data.wrench === null ? undefined : state.wrenches[data.wrench];
   if (!taken) return refusal('wrenchNotTaken');
   const clicked = data.source === 'clicked';
@@ -137,9 +137,17 @@ export function decideReadingVoided(
   if (!record) return err(refusal('unknownReading', { seq: reading }));
   if (reason.trim() === '') return err(refusal('reasonMissing'));
   const typed = record.data.source === 'typed' || record.data.source === 'paper';
-  const refused = typed ? needsHands(state, command) : needsRight(command, 'accept');
-  if (refused) return err(typed ? refused : refusal('receivedByWrench'));
-  return mayVoid(state, record) ? ok({ type: command.type, data: command.data }) : err(refusal('notVoidable'));
+  const supervisor = needsSupervisor(state, command, 'accept', command.data);
+  const refused = typed
+    ? needsHands(state, command)
+    : supervisor?.code === 'noRight'
+      ? refusal('receivedByWrench')
+      : supervisor;
+  if (refused) return err(refused);
+  const renewed = command.data.renews !== undefined && record.status === 'voided' && !typed;
+  return renewed || mayVoid(state, record)
+    ? ok({ type: command.type, data: command.data })
+    : err(refusal('notVoidable'));
 }
 
 /** `reading.received`, `reading.rejected`, `turn.begun`, `reading.elsewhere`. */

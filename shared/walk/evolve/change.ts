@@ -19,6 +19,15 @@ export function withOutcome(state: WalkState, slot: SlotRef, outcome: SlotOutcom
   });
 }
 
+/** A copy of the state with the hole's fastener counted as used, once an attempt (R3). */
+export const withUse = (state: WalkState, hole: HoleId): WalkState =>
+  withHole(state, hole, (value) => ({
+    ...value,
+    used: true,
+    counted: true,
+    uses: value.uses + (value.counted ? 0 : 1),
+  }));
+
 /** What the new deviation is about; everything else has a default. */
 export type DeviationFacts = Partial<Deviation> & { kind: DeviationKind };
 

@@ -11,7 +11,7 @@ import type {
 import { makesUsed, stageOf, walkPasses } from '../slots';
 import { slotDone } from '../route';
 import type { Rework, WalkState } from '../state';
-import { withDeviation, withHole } from './change';
+import { withDeviation, withUse } from './change';
 
 /** `walk.opened`. After earlier readings a final assembly begins with a joint restart, used fasteners counted (W1, R6). */
 export function walkOpened(state: WalkState, event: EventContext, data: WalkOpened): WalkState {
@@ -24,7 +24,7 @@ export function walkOpened(state: WalkState, event: EventContext, data: WalkOpen
     hands: { pulls: data.pulls, records: data.records },
     reworks: restart ? [rework] : [],
   };
-  for (const hole of data.earlier.usedHoles) next = withHole(next, hole, (value) => ({ ...value, used: true }));
+  for (const hole of data.earlier.usedHoles) next = withUse(next, hole);
   return next;
 }
 
@@ -58,7 +58,7 @@ export function walkResumed(state: WalkState, event: EventContext, data: WalkRes
         ]
       : [],
   });
-  if (turn && makesUsed(state, slot)) next = withHole(next, slot.hole, (hole) => ({ ...hole, used: true }));
+  if (turn && makesUsed(state, slot)) next = withUse(next, slot.hole);
   if (rework) return { ...next, reworks: [...next.reworks, rework], resume: null };
   return data.way === 'asInstructed' ? next : { ...next, resume: { slot, way: data.way } };
 }

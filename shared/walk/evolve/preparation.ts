@@ -30,8 +30,9 @@ function stepFound(state: WalkState, event: EventContext, data: StepDone): WalkS
 export function stepDone(state: WalkState, event: EventContext, data: StepDone): WalkState {
   const step = state.procedure.steps.find((candidate) => candidate.id === data.step);
   const steps = { ...state.steps, [stepKey(data.step, data.hole)]: { ...data, seq: event.seq } };
-  const stripesPainted = state.stripesPainted || (step?.paintsStripes === true && data.answer === 'yes');
-  return stepFound({ ...state, steps, stripesPainted }, event, data);
+  const painted = step?.paintsStripes === true && data.answer === 'yes';
+  const attempts = Object.fromEntries(Object.entries(state.holes).map(([id, hole]) => [id, hole.attempt]));
+  return stepFound({ ...state, steps, striped: painted ? attempts : state.striped }, event, data);
 }
 
 /** `step.corrected`: the new answer stands, both are in the chain (R10). */

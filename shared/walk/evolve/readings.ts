@@ -1,11 +1,11 @@
 import type { Deviation, DeviationKind } from '../deviation';
 import type { EventContext, ReadingElsewhere, ReadingEntry, ReadingTaken, SlotRef, StageDone } from '../events';
-import { judgeReading } from '../judgeReading';
+import { judgeReading, pullsInAll } from '../judgeReading';
 import { placeReading, type Placement } from '../placement';
 import { makesUsed, slotKey, stageOf } from '../slots';
 import type { ReadingRecord, SlotOutcome, WalkState } from '../state';
 import { isLapsed } from '../../crib/due';
-import { withDeviation, withDeviations, withHole, withOutcome } from './change';
+import { withDeviation, withDeviations, withHole, withOutcome, withUse } from './change';
 import { closePasses, touchPass } from './passes';
 
 const slotOf = (entry: SlotRef): SlotRef => ({
@@ -64,6 +64,7 @@ function outcomeOf(event: EventContext, data: ReadingTaken, placement: Placement
     status: off ? 'open' : 'done',
     seq: event.seq,
     total: data.total,
+    pulls: pullsInAll(data, placement),
     verdict: data.verdict,
     ...(data.moved === undefined ? {} : { moved: data.moved }),
     ...(placement.kind === 'instructed' ? {} : { outOfOrder: true }),
@@ -101,11 +102,12 @@ function applyReading(state: WalkState, event: EventContext, data: ReadingTaken,
     ...withHands(state),
     readings: [...state.readings, record],
     retype: null,
-    resume: null,
     begun: null,
   };
+  // What was begun at the hole on the screen waits on when another one was tightened (R5, W9).
+  if (state.resume?.slot.hole === data.hole) next = { ...next, resume: null };
   if (record.countsFor) next = withOutcome(next, record.countsFor, outcomeOf(event, data, placement, off !== null));
-  if (makesUsed(state, placement.slot)) next = withHole(next, data.hole, (hole) => ({ ...hole, used: true }));
+  if (makesUsed(state, placement.slot)) next = withUse(next, data.hole);
   next = touchPass(next, data.pass, event, slotOf(data));
   if (off) {
     next = withDeviation(next, event, { kind: off, hole: data.hole, slot: placement.slot, reading: event.seq });
@@ -146,7 +148,7 @@ function withRoundsBack(state: WalkState, slot: SlotRef): WalkState {
 /** `reading.voided`: what stood before comes back, and the figure is typed again without a pull (R10). */
 export function readingVoided(state: WalkState, event: EventContext, reading: number, reason: string): WalkState {
   const record = state.readings.find((candidate) => candidate.seq === reading);
-  if (!record) return state;
+  if (!record || record.status === 'voided') return state;
   const slot = record.countsFor ?? slotOf(record.data);
   const readings = state.readings.map((candidate) =>
     candidate.seq === reading ? { ...candidate, status: 'voided' as const, voidReason: reason } : candidate,

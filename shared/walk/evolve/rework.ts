@@ -12,7 +12,7 @@ import type {
 import { stepKey, stepsOfHole } from '../route';
 import { fastenerOf, looseningOrder, makesUsed, slotKey, slotsOfHole } from '../slots';
 import type { Rework, WalkState } from '../state';
-import { withDeviation, withDeviations, withHole, withOutcome } from './change';
+import { withDeviation, withDeviations, withHole, withOutcome, withUse } from './change';
 import { closePasses, reopenRounds } from './passes';
 
 const isRework = (choice: Choice): choice is 'restart' | 'replace' | 'restartJoint' =>
@@ -143,7 +143,7 @@ export function deviationNoted(
   if (data.kind === 'differentUnknown') {
     next = { ...next, retype: null };
     if (slot && data.hole && makesUsed(state, { ...slot, hole: data.hole })) {
-      next = withHole(next, data.hole, (hole) => ({ ...hole, used: true }));
+      next = withUse(next, data.hole);
     }
   }
   if (data.kind === 'strippedThread' && data.hole) next = { ...next, toRepair: [...next.toRepair, data.hole] };
@@ -164,7 +164,13 @@ function withoutSteps(state: WalkState, hole: HoleId): WalkState {
 
 /** A fastener that was let go begins again: nothing of its tension is left (R2). */
 function letGo(state: WalkState, hole: HoleId, catchUpTo: string | null): WalkState {
-  const cleared = withHole(state, hole, (value) => ({ ...value, attempt: value.attempt + 1, slots: {}, catchUpTo }));
+  const cleared = withHole(state, hole, (value) => ({
+    ...value,
+    attempt: value.attempt + 1,
+    counted: false,
+    slots: {},
+    catchUpTo,
+  }));
   const retype = state.retype?.slot.hole === hole ? null : state.retype;
   return { ...withoutSteps(cleared, hole), retype, resume: null };
 }
@@ -237,6 +243,7 @@ export function fastenerFitted(state: WalkState, data: FastenerFitted): WalkStat
     ...hole,
     present: true,
     used: isNew ? false : hole.used,
+    uses: isNew ? 0 : hole.uses,
     fastenerNo: hole.fastenerNo + (isNew ? 1 : 0),
   }));
   if (isNew) {
