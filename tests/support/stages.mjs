@@ -81,7 +81,7 @@ const endToEnd = async () => {
 };
 
 const lintCommands = () => [
-  [eslint, '.', '--max-warnings', '0', '--cache', '--cache-location', path.join(cache, 'eslint')],
+  [eslint, '.', '--max-warnings', '0'],
   [knip, '--no-progress', '--no-config-hints'],
 ];
 
