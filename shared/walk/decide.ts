@@ -1,6 +1,6 @@
 import { err, type Result } from '../kernel/result';
 import type { WalkCommand } from './commands';
-import { guard } from './decide/guards';
+import { guard } from './rules/guards';
 import {
   decideCountersigned,
   decideHands,
@@ -14,7 +14,7 @@ import {
   decideStopped,
   decideTakenOver,
   decideVoided,
-} from './decide/lifecycle';
+} from './rules/lifecycle';
 import {
   decidePart,
   decideStepCorrected,
@@ -22,9 +22,9 @@ import {
   decideWaitSkipped,
   decideWrenchReported,
   decideWrenchTaken,
-} from './decide/preparation';
-import { decideReadingTaken, decideReadingVoided, decideReceived, decideStageDone } from './decide/readings';
-import { decideDeviationNoted, decideHandwork, decideHold, decideSettled } from './decide/rework';
+} from './rules/preparation';
+import { decideReadingTaken, decideReadingVoided, decideReceived, decideStageDone } from './rules/readings';
+import { decideDeviationNoted, decideHandwork, decideHold, decideSettled } from './rules/rework';
 import type { EventBody } from './events';
 import type { Refusal } from './refusal';
 import type { WalkState } from './state';

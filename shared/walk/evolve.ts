@@ -8,7 +8,7 @@ import {
   fastenerRemoved,
   holdCleared,
   threadRepaired,
-} from './evolve/rework';
+} from './effects/rework';
 import {
   handsChanged,
   walkOpened,
@@ -17,7 +17,7 @@ import {
   walkSigned,
   walkStopped,
   walkTakenOver,
-} from './evolve/lifecycle';
+} from './effects/lifecycle';
 import {
   partCorrected,
   partTaken,
@@ -28,8 +28,8 @@ import {
   waitSkipped,
   wrenchReported,
   wrenchTaken,
-} from './evolve/preparation';
-import { readingElsewhere, readingTaken, readingVoided, stageDone } from './evolve/readings';
+} from './effects/preparation';
+import { readingElsewhere, readingTaken, readingVoided, stageDone } from './effects/readings';
 import { nextSlots } from './route';
 import type { WalkState } from './state';
 

@@ -33,7 +33,7 @@ import {
   windowOf,
 } from './slots';
 import type { Rework, TakenWrench, WalkState } from './state';
-import { withUse } from './evolve/change';
+import { withUse } from './effects/change';
 
 /** How the figure of the coming reading is to be taken. */
 export type PullMode = 'fresh' | 'pullAgain' | 'retype' | 'finishByTotal' | 'finishByStripe';
