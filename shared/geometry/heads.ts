@@ -89,48 +89,68 @@ const LEAN_RADIUS = 17.6;
 /** Whether a head of this radius is drawn in its small form; `lean` where the drawing is read from near. */
 export const isSmallHead = (radius: number, lean = false): boolean => radius < (lean ? LEAN_RADIUS : SMALL_HEAD / 2);
 
-/** Geometry of one head from its state. Pure; same input, same paths. */
-export function headGeometry(state: HeadState, draw: HeadDraw): HeadGeometry {
+/** What all parts of one head are measured from. */
+interface Frame {
+  radius: number;
+  /** Scale: 1 at a radius of 36. */
+  k: number;
+  small: boolean;
+  tick: number;
+  angle: (turn: number) => number;
+}
+
+function frameOf(state: HeadState, draw: HeadDraw): Frame {
   const small = isSmallHead(draw.radius, draw.lean);
   const radius = state.now ? draw.radius * (small ? 1.1 : NOW_DISC) : draw.radius;
-  const k = radius / 36;
   const tick = draw.tickDeg ?? 0;
   const hand = state.ccw ? -1 : 1;
-  const angle = (turn: number): number => tick + hand * turn;
-  const turned = state.passDeg ?? 0;
-  const begun = state.earlierDeg;
-  const lane = (i: number): number => radius + 7 * Math.min(1.6, k) + i * 5 * k;
-  const arcs = (from: number, to: number): string => laneArcs(from, to, lane, angle);
-  const wide = Math.max(2.2, 3.4 * k);
-  const earlierPath = arcs(0, begun);
-  const passPath = state.passDeg === null ? '' : arcs(begun, begun + turned);
-  const pendingPath = state.pendingDeg === undefined ? '' : arcs(begun + turned, begun + state.pendingDeg);
+  return { radius, k: radius / 36, small, tick, angle: (turn) => tick + hand * turn };
+}
+
+/** Geometry of one head from its state. Pure; same input, same paths. */
+export function headGeometry(state: HeadState, draw: HeadDraw): HeadGeometry {
+  const frame = frameOf(state, draw);
+  const { radius, k, small } = frame;
   const gone = state.fill === 'none';
-  const hollow = state.fill === 'bare' || state.fill === 'todo';
   return {
     radius,
     small,
     ring: state.now ? { radius: draw.radius * NOW_RING, width: Math.max(3.5, Math.min(5, 5.5 * k)) } : null,
-    disc: {
-      shape: gone ? 'gone' : state.fill === 'unknown' ? 'half' : hollow ? 'hollow' : 'filled',
-      tone: state.fill,
-      width: Math.max(2.4, 3 * k),
-    },
+    disc: { shape: discShape(state.fill), tone: state.fill, width: Math.max(2.4, 3 * k) },
     halfPath: `M0 ${-radius}A${radius} ${radius} 0 0 0 0 ${radius}Z`,
     crossPath: crossPath(radius * 0.5),
     hexagon:
       small || gone
         ? null
-        : { path: hexagonPath(radius * 0.83, stripeAngle(state, angle)), width: Math.max(1.2, 1.7 * k) },
-    ticks: state.hasTick ? tickMarks(state.group, tick, radius, k, small) : null,
-    earlier: earlierPath ? { path: earlierPath, width: Math.max(1.6, 2 * k) } : null,
-    pass: passPath ? { path: passPath, width: wide } : null,
-    pending: pendingPath ? { path: pendingPath, width: wide } : null,
-    wholeTurns: Math.floor((Math.abs(begun + turned) + 1e-9) / 360),
-    pegs: state.pegs && !gone ? pegMarks(begun, state.pegs, radius, k, angle) : null,
-    stripe: gone ? null : stripeBar(state, radius, k, angle),
+        : { path: hexagonPath(radius * 0.83, stripeAngle(state, frame.angle)), width: Math.max(1.2, 1.7 * k) },
+    ticks: state.hasTick ? tickMarks(state.group, frame) : null,
+    ...turnArcs(state, frame),
+    wholeTurns: Math.floor((Math.abs(state.earlierDeg + (state.passDeg ?? 0)) + 1e-9) / 360),
+    pegs: state.pegs && !gone ? pegMarks(state.earlierDeg, state.pegs, frame) : null,
+    stripe: gone ? null : stripeBar(state, frame),
     label: small || gone ? null : labelMeasure(draw.label, radius, state.now),
     marks: headMarks(state, radius, small),
+  };
+}
+
+function discShape(fill: HeadFill): HeadGeometry['disc']['shape'] {
+  if (fill === 'none') return 'gone';
+  if (fill === 'unknown') return 'half';
+  return fill === 'bare' || fill === 'todo' ? 'hollow' : 'filled';
+}
+
+function turnArcs(state: HeadState, frame: Frame): Pick<HeadGeometry, 'earlier' | 'pass' | 'pending'> {
+  const begun = state.earlierDeg;
+  const turned = state.passDeg ?? 0;
+  const thick = Math.max(2.2, 3.4 * frame.k);
+  const arc = (from: number, to: number, width: number): { path: string; width: number } | null => {
+    const path = laneArcs(from, to, frame);
+    return path ? { path, width } : null;
+  };
+  return {
+    earlier: arc(0, begun, Math.max(1.6, 2 * frame.k)),
+    pass: arc(begun, begun + turned, thick),
+    pending: state.pendingDeg === undefined ? null : arc(begun + turned, begun + state.pendingDeg, thick),
   };
 }
 
@@ -138,7 +158,8 @@ export function headGeometry(state: HeadState, draw: HeadDraw): HeadGeometry {
  * Each whole turn has a lane of its own further out, so that a closed circle stands for a whole turn and the rest of
  * the turn stays to be read on the next lane.
  */
-function laneArcs(from: number, to: number, lane: (i: number) => number, angle: (turn: number) => number): string {
+function laneArcs(from: number, to: number, { radius, k, angle }: Frame): string {
+  const lane = (i: number): number => radius + 7 * Math.min(1.6, k) + i * 5 * k;
   const [low, high] = from <= to ? [from, to] : [to, from];
   if (low < 0) return arcPath(lane(0), angle(Math.max(low, -359.5)), angle(high));
   let path = '';
@@ -154,7 +175,7 @@ const stripeAngle = (state: HeadState, angle: (turn: number) => number): number 
   angle(state.pendingDeg === undefined ? (state.stripeDeg ?? 0) : state.earlierDeg + state.pendingDeg);
 
 /** Straight bar, 0.4 R long, across the rim. */
-function stripeBar(state: HeadState, radius: number, k: number, angle: (turn: number) => number): Stripe | null {
+function stripeBar(state: HeadState, { radius, k, angle }: Frame): Stripe | null {
   if (state.stripeDeg === null && state.pendingDeg === undefined) return null;
   const width = Math.max(5, 8.5 * k);
   const outer = radius + 1.5 * k;
@@ -166,9 +187,7 @@ function stripeBar(state: HeadState, radius: number, k: number, angle: (turn: nu
 function pegMarks(
   begun: number,
   pegs: { lowDeg: number; highDeg: number },
-  radius: number,
-  k: number,
-  angle: (turn: number) => number,
+  { radius, k, angle }: Frame,
 ): NonNullable<HeadGeometry['pegs']> {
   const [low, high] = [angle(begun + pegs.lowDeg), angle(begun + pegs.highDeg)];
   const [inner, outer] = [radius + 2 * k, radius + 14 * k];
@@ -182,13 +201,7 @@ function pegMarks(
 /** Ticks of a group: A one, B two, C three; from D on four, the letter tells them apart. */
 export const tickCount = (group: string): number => Math.max(1, Math.min(4, group.charCodeAt(0) - 64 || 1));
 
-function tickMarks(
-  group: string,
-  tick: number,
-  radius: number,
-  k: number,
-  small: boolean,
-): NonNullable<HeadGeometry['ticks']> {
+function tickMarks(group: string, { radius, k, small, tick }: Frame): NonNullable<HeadGeometry['ticks']> {
   const count = tickCount(group);
   const width = small ? Math.max(1.8, 4.4 * k) : Math.max(3, 4 * k) * (count > 2 ? 0.8 : 1);
   const gap = width * (count > 2 ? 1.9 : 2.2);

@@ -85,7 +85,7 @@ function lensPlace(layout: MapLayout, width: number, height: number): Point | nu
 function covers(layout: MapLayout, x: number, y: number, width: number, height: number, clear: number): boolean {
   const gap = (p: Point): number =>
     Math.hypot(Math.max(x - p.x, 0, p.x - x - width), Math.max(y - p.y, 0, p.y - y - height));
-  return layout.holes.some((h) => gap(h) < clear) || layout.sides.some((s) => gap(wordsMiddle(s)) < 32);
+  return layout.holes.some((h) => gap(h) < clear) || layout.sides.some((s) => gap(wordsMiddle(s)) < 40);
 }
 
 const wordsMiddle = (s: PlacedSide): Point => ({ x: s.x + { start: 28, middle: 0, end: -28 }[s.anchor], y: s.y });
