@@ -37,6 +37,24 @@ export interface ReadingEntryUse {
 
 const isFigureKey = (key: string): boolean => key.length === 1 && /[\p{L}\p{N}.,\-−+°]/u.test(key);
 
+/** The page's keys as events of the entry, until the screen goes. */
+function listenForKeys(listens: () => boolean, send: (event: EntryEvent) => void): void {
+  function onKeyDown(event: KeyboardEvent): void {
+    if (!listens() || event.ctrlKey || event.altKey || event.metaKey || isForField(event)) return;
+    const at = performance.now();
+    if (event.key === 'Enter') {
+      if (isForControl(event)) return;
+      if (!event.repeat) send({ type: 'enter', at });
+    } else if (event.key === 'Backspace') send({ type: 'delete' });
+    else if (isFigureKey(event.key)) {
+      if (!event.repeat) send({ type: 'key', key: event.key, at });
+    } else return;
+    event.preventDefault();
+  }
+  onMounted(() => window.addEventListener('keydown', onKeyDown));
+  onBeforeUnmount(() => window.removeEventListener('keydown', onKeyDown));
+}
+
 /** Drives the pure machine of `readingEntry` with the page's keys and a clock. */
 export function useReadingEntry(options: ReadingEntryOptions): ReadingEntryUse {
   const { context, listens, onEffect, begins } = options;
@@ -53,31 +71,14 @@ export function useReadingEntry(options: ReadingEntryOptions): ReadingEntryUse {
     if (step.effect) onEffect(step.effect);
   }
 
-  function onKeyDown(event: KeyboardEvent): void {
-    if (!listens() || event.ctrlKey || event.altKey || event.metaKey || isForField(event)) return;
-    const at = performance.now();
-    if (event.key === 'Enter') {
-      if (isForControl(event)) return;
-      if (!event.repeat) send({ type: 'enter', at });
-    } else if (event.key === 'Backspace') send({ type: 'delete' });
-    else if (isFigureKey(event.key)) {
-      if (!event.repeat) send({ type: 'key', key: event.key, at });
-    } else return;
-    event.preventDefault();
-  }
-
-  onMounted(() => window.addEventListener('keydown', onKeyDown));
-  onBeforeUnmount(() => {
-    clearTimeout(rest);
-    window.removeEventListener('keydown', onKeyDown);
-  });
+  listenForKeys(listens, send);
+  onBeforeUnmount(() => clearTimeout(rest));
   watch(begins, () => {
     clearTimeout(rest);
     state.value = emptyEntry(context.value.fields);
   });
-
   return {
-    state: readonly(state) as Readonly<Ref<EntryState>>,
+    state: readonly(state),
     complete: computed(() => isComplete(state.value, context.value)),
     tapDigit: (key) => send({ type: 'key', key, at: performance.now(), tap: true }),
     erase: () => send({ type: 'delete' }),
