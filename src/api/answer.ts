@@ -4,7 +4,7 @@ export type Answer<T> =
   /** The server said no, and why. */
   | { kind: 'refused'; refusal: ServerRefusal }
   /** Come again later: too much at once, or the server is ill. */
-  | { kind: 'busy'; status: number; code: string; retryAfterMs: number | null }
+  | { kind: 'busy'; status: number; code: string; retryAfterMs: number | null; details?: Record<string, unknown> }
   /** Somebody else answered: a captive portal, a proxy, another program (fault 23). Nothing counts as sent. */
   | { kind: 'notOurs'; status: number }
   /** Nobody answered: no network, no server, TLS error, or it took too long. */
@@ -50,7 +50,8 @@ async function failureOf(response: Response): Promise<Answer<never>> {
   const refusal = isJson(response) ? refusalOf(status, await jsonOf(response)) : null;
   if (status === 429 || status >= 500) {
     const code = refusal?.code ?? (status === 429 ? 'server.busy' : 'server.ill');
-    return { kind: 'busy', status, code, retryAfterMs: retryAfterOf(response) };
+    const details = refusal ? { details: refusal.details } : {};
+    return { kind: 'busy', status, code, retryAfterMs: retryAfterOf(response), ...details };
   }
   // A proxy in between refuses a large body with a page of its own: that too has to be understood as too large.
   if (status === 413) {

@@ -1,5 +1,6 @@
 import type { AnswerOf, EndpointDefinition, ParamsOf, SentBodyOf, SentQueryOf } from '@shared/contracts/defineEndpoint';
 import { answerOf, type Answer } from './answer';
+import { callUrl, type CalledAddress } from './callUrl';
 
 /*
  * The tablet speaks the contracts by their types alone: the schemas stay out of the walk's bundle, and a new server may
@@ -7,7 +8,9 @@ import { answerOf, type Answer } from './answer';
  */
 
 /** The parts of a call that an endpoint asks for, and no others. */
-type CallParts<E extends EndpointDefinition> = (ParamsOf<E> extends undefined ? object : { params: ParamsOf<E> }) &
+export type CallParts<E extends EndpointDefinition> = (ParamsOf<E> extends undefined
+  ? object
+  : { params: ParamsOf<E> }) &
   (SentQueryOf<E> extends undefined ? object : { query: SentQueryOf<E> }) &
   (SentBodyOf<E> extends undefined ? object : { body: SentBodyOf<E> });
 
@@ -34,22 +37,10 @@ export interface TabletClient {
 
 const TIMEOUT_MS = 30_000;
 
-interface LooseCall {
+interface LooseCall extends CalledAddress {
   method: string;
-  path: string;
   token?: string;
-  params?: Record<string, string>;
-  query?: Record<string, unknown>;
   body?: unknown;
-}
-
-function urlOf(origin: string, { path, params = {}, query = {} }: LooseCall): string {
-  const filled = path.replace(/:([A-Za-z0-9]+)/g, (_, name: string) => encodeURIComponent(params[name] ?? ''));
-  const asked = Object.entries(query)
-    .filter(([, value]) => value !== undefined)
-    .map(([name, value]) => `${encodeURIComponent(name)}=${encodeURIComponent(String(value))}`)
-    .join('&');
-  return `${origin}${filled}${asked ? `?${asked}` : ''}`;
 }
 
 function requestOf({ method, token, body }: LooseCall, timeoutMs: number): RequestInit {
@@ -76,7 +67,7 @@ export function tabletClient({ fetch, origin = '', timeoutMs = TIMEOUT_MS }: Tab
       const loose = call as unknown as LooseCall;
       let response: Response;
       try {
-        response = await fetch(urlOf(origin, loose), requestOf(loose, timeoutMs));
+        response = await fetch(callUrl(origin, loose), requestOf(loose, timeoutMs));
       } catch {
         // `fetch` rejects alike for no network, refused connection, TLS error and time-out; all mean: not reached.
         return { kind: 'unreachable' };

@@ -1,0 +1,44 @@
+import { keepPreviousData, useMutation, useQuery } from '@tanstack/vue-query';
+import type { QueryKey, UseMutationReturnType, UseQueryReturnType } from '@tanstack/vue-query';
+import { computed, toValue, type MaybeRefOrGetter } from 'vue';
+import { officeCache } from './officeCache';
+
+/** One read of the server. The key holds everything the read hangs on; `enabled` keeps it back. */
+export interface OfficeRead<T> {
+  key: MaybeRefOrGetter<QueryKey>;
+  read: (signal: AbortSignal) => Promise<T>;
+  enabled?: MaybeRefOrGetter<boolean>;
+  /** Shows the last answer while another filter is being read. */
+  keep?: boolean;
+  refetchEvery?: number;
+}
+
+/** Reads into the office's own cache. */
+export function useOfficeQuery<T>(read: OfficeRead<T>): UseQueryReturnType<T, Error> {
+  return useQuery<T, Error, T, QueryKey>(
+    {
+      queryKey: computed(() => toValue(read.key)),
+      queryFn: ({ signal }) => read.read(signal),
+      enabled: computed(() => toValue(read.enabled) ?? true),
+      ...(read.keep ? { placeholderData: keepPreviousData } : {}),
+      ...(read.refetchEvery ? { refetchInterval: read.refetchEvery } : {}),
+    },
+    officeCache,
+  ) as UseQueryReturnType<T, Error>;
+}
+
+/** A write; what it touched is read again before it counts as done. */
+export function useOfficeMutation<T, V>(
+  write: (value: V) => Promise<T>,
+  touches: readonly QueryKey[],
+): UseMutationReturnType<T, Error, V, unknown> {
+  return useMutation<T, Error, V>(
+    {
+      mutationFn: write,
+      onSuccess: async () => {
+        await Promise.all(touches.map((queryKey) => officeCache.invalidateQueries({ queryKey })));
+      },
+    },
+    officeCache,
+  );
+}
