@@ -142,12 +142,14 @@ export class SyncEngine {
   }
 
   async #state(): Promise<SyncState> {
-    const { database, isOnline, tablet } = this.#deps;
+    const { database, settings, isOnline, tablet } = this.#deps;
+    this.#memory.epochKnown ??= (await settings.get('catalogue')) !== undefined;
     const { bearer, revoked, retryAt, mostEvents, chains, catalogueDueAt, reportDueAt } = this.#memory;
     return {
       enrolled: tablet() !== null,
       revoked,
       online: isOnline(),
+      epochKnown: this.#memory.epochKnown,
       bearerEndsAt: bearer?.endsAt ?? null,
       retryAt,
       walks: await readBacklog(database),

@@ -8,6 +8,8 @@ import type { Bearer } from './tabletAuth';
 export interface SyncMemory {
   bearer: Bearer | null;
   revoked: boolean;
+  /** Null until the settings were asked. */
+  epochKnown: boolean | null;
   failures: number;
   retryAt: number | null;
   /** What the last failure looked like, and its code. */
@@ -28,6 +30,7 @@ export interface SyncMemory {
 export const freshMemory = (): SyncMemory => ({
   bearer: null,
   revoked: false,
+  epochKnown: null,
   failures: 0,
   retryAt: null,
   trouble: null,

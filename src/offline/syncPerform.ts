@@ -50,9 +50,13 @@ const giveTime = (context: SyncContext, refusal: ServerRefusal): void =>
 
 async function authenticate(context: SyncContext): Promise<void> {
   const answer = await context.authenticate();
+  if (answer.kind === 'done') {
+    // A token alone mends nothing: what failed before it goes on counting its failures.
+    context.memory.bearer = answer.value;
+    return;
+  }
   const refusal = noteAnswer(context.memory, answer, moment(context));
   if (refusal) giveTime(context, refusal);
-  if (answer.kind === 'done') context.memory.bearer = answer.value;
 }
 
 async function takeReceipt(context: SyncContext, step: Step<'sendEvents'>, receipt: Receipt): Promise<void> {
@@ -65,7 +69,7 @@ async function takeReceipt(context: SyncContext, step: Step<'sendEvents'>, recei
       await blockWalk(database, walk, branch, { code: 'receipt.noProgress', message: '', seq: from, at });
     }
   }
-  memory.mostEvents = BATCH_EVENTS;
+  memory.mostEvents = Math.min(BATCH_EVENTS, memory.mostEvents * 2);
   memory.holes.delete(walk);
   if (receipt.confirmations.length > 0) {
     context.onCatalogue(await keepConfirmations(context.settings, receipt.confirmations));
@@ -112,9 +116,10 @@ async function sendBlob(context: SyncContext, token: string, { sha256 }: Step<'s
 }
 
 async function lookAhead({ database, memory, tablet }: SyncContext, catalogue: Catalogue): Promise<void> {
-  const [heads, standings] = await database.read(['heads', 'standings'], (transaction) =>
-    Promise.all([rowsOf<HeadRow>(transaction, 'heads'), rowsOf<StandingRow>(transaction, 'standings')]),
-  );
+  const { heads, standings } = await database.read(['heads', 'standings'], async (transaction) => ({
+    heads: await rowsOf<HeadRow>(transaction, 'heads'),
+    standings: await rowsOf<StandingRow>(transaction, 'standings'),
+  }));
   const ahead = aheadAtServer(Object.values(catalogue.walks), heads, standings, tablet);
   memory.chains = ahead.grown;
   if (ahead.lost.some((walk) => !memory.lost.includes(walk))) memory.reportDueAt = 0;
@@ -123,10 +128,11 @@ async function lookAhead({ database, memory, tablet }: SyncContext, catalogue: C
 
 async function takeCatalogue(context: SyncContext, answer: CatalogueAnswer): Promise<void> {
   const { settings, clock, database, tablet, memory } = context;
-  const keptEpoch = (await settings.get('catalogue'))?.epoch ?? '';
+  const keptEpoch = (await settings.get('catalogue'))?.epoch;
   // Before the new epoch is saved: a tablet that dies in between must notice it again.
-  if (keptEpoch !== '' && keptEpoch !== answer.epoch) await resendAll(database, tablet);
+  if (keptEpoch !== answer.epoch) await resendAll(database, tablet);
   const catalogue = await applyCatalogue(settings, clock, answer);
+  memory.epochKnown = true;
   memory.catalogueDueAt = clock.now() + CATALOGUE_EVERY_MS;
   await lookAhead(context, catalogue);
   context.onCatalogue(catalogue);

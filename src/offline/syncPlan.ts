@@ -14,6 +14,8 @@ export interface SyncState {
   /** The server has revoked this tablet: nothing is sent, nothing is removed. */
   revoked: boolean;
   online: boolean;
+  /** The server's epoch is known: what it confirms can be taken back if it changes (decision 9). */
+  epochKnown: boolean;
   /** Tablet time at which the bearer ends; null without one. */
   bearerEndsAt: number | null;
   /** Not before this time, after failures; null = now. */
@@ -63,6 +65,7 @@ function blobStep(state: SyncState): SyncStep | null {
 }
 
 function workStep(state: SyncState, now: number): SyncStep | null {
+  if (!state.epochKnown) return { do: 'fetchCatalogue' };
   const events = eventsStep(state) ?? blobStep(state);
   if (events) return events;
   if (now >= state.catalogueDueAt) return { do: 'fetchCatalogue' };
