@@ -24,7 +24,7 @@ export function useOfficeQuery<T>(read: OfficeRead<T>): UseQueryReturnType<T, Er
       ...(read.refetchEvery ? { refetchInterval: read.refetchEvery } : {}),
     },
     officeCache,
-  ) as UseQueryReturnType<T, Error>;
+  );
 }
 
 /** A write; what it touched is read again before it counts as done. */
