@@ -67,38 +67,56 @@ const refusedBy = ({ quarantined }: Receipt, at: string): Blocked | null => {
   return first ? { code: first.code, message: first.message, seq: first.seq, at } : null;
 };
 
+/** What a receipt came to. `grown`: the server holds events after ours that this tablet does not know. */
+export type ReceiptFit = 'fits' | 'grown' | 'mismatch';
+
+async function fitOf(
+  transaction: IDBTransaction,
+  { walk, branch }: SentBatch,
+  { next, hash }: Receipt,
+): Promise<ReceiptFit> {
+  if (next === 0) return 'fits';
+  const last = await rowOf<EventRow>(transaction, 'events', [walk, branch, next - 1]);
+  if (!last) return 'grown';
+  return last.hash === hash ? 'fits' : 'mismatch';
+}
+
+/** The batch a receipt answers. */
+export interface SentBatch {
+  walk: string;
+  branch: number;
+  to: number;
+}
+
 /**
  * Takes the server's word. Only what the receipt says is stored leaves the outbox, and only if its hash is ours (I2,
- * I5). A refused event blocks its walk and stays. Returns false where the receipt does not fit this chain: the walk is
- * then blocked as `receipt.mismatch` and nothing is removed.
+ * I5); where the office has already written on, at most what this batch held. A refused event blocks its walk and stays.
+ * With `mismatch` the walk is blocked and nothing is removed.
  */
 export async function applyReceipt(
   database: TabletDatabase,
-  { walk, branch }: { walk: string; branch: number },
+  sent: SentBatch,
   receipt: Receipt,
   at: string,
-): Promise<boolean> {
+): Promise<ReceiptFit> {
+  const { walk, branch, to } = sent;
   return database.write(['events', 'outbox', 'standings', 'receipts'], async (transaction) => {
     const standing = await standingOf(transaction, walk, branch);
-    const last = await rowOf<EventRow>(transaction, 'events', [walk, branch, receipt.next - 1]);
-    const fits = receipt.next === 0 || last?.hash === receipt.hash;
-    if (!fits) {
+    const fit = await fitOf(transaction, sent, receipt);
+    if (fit === 'mismatch') {
       const blocked: Blocked = { code: 'receipt.mismatch', message: '', seq: receipt.next, at };
       transaction.objectStore('standings').put({ ...standing, blocked });
-      return false;
+      return fit;
     }
-    if (receipt.next > 0) transaction.objectStore('outbox').delete(chainRange(walk, branch, 0, receipt.next - 1));
+    const blocked = refusedBy(receipt, at);
+    const next = fit === 'fits' ? receipt.next : (blocked?.seq ?? to + 1);
+    if (next > 0) transaction.objectStore('outbox').delete(chainRange(walk, branch, 0, next - 1));
     const row: ReceiptRow = { walk, branch, next: receipt.next, hash: receipt.hash, receivedAt: at };
     transaction.objectStore('receipts').put(row);
-    const after: StandingRow = {
-      ...standing,
-      confirmed: Math.max(standing.confirmed, receipt.next),
-      blocked: refusedBy(receipt, at),
-      sentAt: at,
-      forked: standing.forked || receipt.forked,
-    };
-    transaction.objectStore('standings').put(after);
-    return true;
+    const confirmed = Math.max(standing.confirmed, next);
+    const forked = standing.forked || receipt.forked;
+    transaction.objectStore('standings').put({ ...standing, confirmed, blocked, sentAt: at, forked });
+    return fit;
   });
 }
 

@@ -149,7 +149,7 @@ describe('signing in with a PIN (decision 10)', () => {
   it('passes on what the server says', async () => {
     answer = no;
     expect(await signInByPin(deps(), ann, '000001')).toMatchObject({ error: { code: 'pin.wrong' } });
-    answer = { kind: 'refused', refusal: { status: 429, code: 'pin.wait', message: '', details: { seconds: 40 } } };
+    answer = { kind: 'busy', status: 429, code: 'pin.wait', retryAfterMs: null, details: { seconds: 40 } };
     expect(await signInByPin(deps(), ann, '000001')).toEqual({
       ok: false,
       error: { code: 'pin.wait', params: { seconds: 40 } },

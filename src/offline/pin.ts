@@ -128,6 +128,10 @@ async function checkThere(
     if (answer.refusal.code === 'pin.wrong') return err(await wrong(deps, person.id));
     return err({ code: answer.refusal.code, params: answer.refusal.details });
   }
+  // 429 as an answer about this person, not about the server.
+  if (answer?.kind === 'busy' && answer.code === 'pin.wait') {
+    return err({ code: answer.code, ...(answer.details ? { params: answer.details } : {}) });
+  }
   // Nothing was compared, here or there: the try does not count against the person.
   await forgetLastTry(deps, person.id);
   if (answer?.kind !== 'done') return err({ code: need });

@@ -244,6 +244,21 @@ describe('sync', () => {
     expect((await log.append(byTechnician(note('still walking')))).ok).toBe(true);
   });
 
+  it('takes a receipt for a chain on which the office has already written further, and fetches the rest', async () => {
+    const kit = await syncKit();
+    await walkOf(kit, ['a']);
+    const handle = kit.server.handle.bind(kit.server);
+    kit.server.handle = async (request) => {
+      const answer = await handle(request);
+      if (!isEvents(new URL(request.url).pathname)) return answer;
+      return Response.json({ ...((await answer.json()) as object), next: 3, hash: 'e'.repeat(64) });
+    };
+    kit.engine.start();
+    await kit.pass(1);
+    expect(await outboxOf(kit)).toEqual([]);
+    expect(kit.network.requests).toContain(`/api/tablet/walks/${WALK}`);
+  });
+
   it('waits quietly without a network and goes on when it is back', async () => {
     const kit = await syncKit();
     await walkOf(kit, ['a']);

@@ -63,7 +63,9 @@ async function takeReceipt(context: SyncContext, step: Step<'sendEvents'>, recei
   const { database, memory, clock } = context;
   const { walk, branch, from } = step;
   const at = isoOf(clock.now());
-  if (await applyReceipt(database, { walk, branch }, receipt, at)) {
+  const fit = await applyReceipt(database, step, receipt, at);
+  if (fit === 'grown') memory.chains = [...new Set([...memory.chains, walk])];
+  if (fit === 'fits') {
     if (receipt.next < from) await resendFrom(database, walk, receipt.next, context.tablet);
     else if (receipt.next === from && receipt.quarantined.length === 0) {
       await blockWalk(database, walk, branch, { code: 'receipt.noProgress', message: '', seq: from, at });

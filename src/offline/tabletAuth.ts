@@ -24,7 +24,7 @@ export interface ServerFailure {
 /** A failed answer as something a person can be told. */
 export function failureOf(answer: Exclude<Answer<unknown>, { kind: 'done' }>): ServerFailure {
   if (answer.kind === 'refused') return { code: answer.refusal.code, params: answer.refusal.details };
-  if (answer.kind === 'busy') return { code: answer.code };
+  if (answer.kind === 'busy') return { code: answer.code, ...(answer.details ? { params: answer.details } : {}) };
   return { code: answer.kind === 'notOurs' ? 'server.notOurs' : 'server.unreachable' };
 }
 
