@@ -308,14 +308,15 @@ function closingInstruction(state: WalkState): Instruction {
 export function workInstruction(state: WalkState, now: Now): Instruction {
   const open = state.deviations.find((deviation) => deviation.status === 'open');
   if (open) return { kind: 'settle', deviation: open, offers: offersFor(state, open) };
-  const rework = state.reworks[0];
-  if (rework) return reworkInstruction(state, rework);
+  // A figure is typed again while it can still be read, before anything else is touched (R10).
   if (state.retype) {
     const { slot } = state.retype;
     const pass = walkPasses(state).find((candidate) => candidate.id === slot.pass);
     const stage = pass?.stages.find((candidate) => candidate.id === slot.stage);
     if (pass && stage) return pullOf(state, slot, pass, stage, now);
   }
+  const rework = state.reworks[0];
+  if (rework) return reworkInstruction(state, rework);
   for (const item of route(state)) {
     const instruction = itemInstruction(state, item, now);
     if (instruction) return instruction;
