@@ -349,7 +349,8 @@ export const wasInterrupted = (state: WalkState, boot: string): boolean =>
   state.opened !== null &&
   state.paused === null &&
   boot !== state.boot &&
-  (state.everHands.length === 0 || signersLeft(state).length > 0);
+  // Whoever signs has looked at the work: nothing is under way any more.
+  !state.signatures.some((signature) => signature.stands);
 
 /** The one thing to do now (W4), and what stands in its way. */
 export function instructionOf(state: WalkState, now: Now): Instruction {
