@@ -1,4 +1,4 @@
-import { createApp, type Component } from 'vue';
+import { createApp } from 'vue';
 import { installQuasar } from '@/boot/quasar';
 import { applyTheme } from '@/boot/theme';
 import { createWords, localeOf } from '@/i18n';
@@ -9,14 +9,14 @@ import GalleryHeads from './GalleryHeads.vue';
 import GalleryWalk from './GalleryWalk.vue';
 
 /** One screen a name: ?show=walk|choice|heads|flange|forms, ?theme=dim, ?lang=es, ?hand=left, ?turns=1. */
-const screens: Record<string, Component> = {
+const screens = {
   walk: GalleryWalk,
   choice: GalleryChoice,
   heads: GalleryHeads,
   flange: GalleryFlange,
   forms: GalleryForms,
 };
-const asked = new URLSearchParams(location.search);
+const asked = new URLSearchParams(globalThis.location.search);
 const locale = localeOf(asked.get('lang'));
 const screen = screens[asked.get('show') ?? 'walk'] ?? GalleryWalk;
 applyTheme(asked.get('theme') === 'dim' ? 'dim' : 'light');
