@@ -131,6 +131,24 @@ export function holdCleared(state: WalkState, id: string): WalkState {
 
 const noted = new Set(['wrenchDropped', 'other']);
 
+/**
+ * The place a report is about: what is tightened now, at the hole that is named where a different one was tightened; for
+ * any other hole than the one on the screen the last stage it took.
+ */
+function placeOfReport(
+  state: WalkState,
+  hole: HoleId,
+  kind: DeviationNoted['kind'],
+  now: Deviation['slot'],
+): Deviation['slot'] {
+  if (now?.hole === hole) return now;
+  const own = slotsOfHole(state, hole);
+  const same = now && own.find((slot) => slotKey(slot) === slotKey(now));
+  if (kind === 'differentUnknown' && same) return same;
+  const taken = own.filter((slot) => state.holes[hole]?.slots[slotKey(slot)] !== undefined);
+  return taken.at(-1) ?? own[0] ?? null;
+}
+
 /** `deviation.noted`: what a person reports. */
 export function deviationNoted(
   state: WalkState,
@@ -139,12 +157,12 @@ export function deviationNoted(
   slot: Deviation['slot'],
 ): WalkState {
   const status = noted.has(data.kind) ? 'noted' : 'open';
-  let next = withDeviation(state, event, { kind: data.kind, hole: data.hole, slot, status, note: data.note });
+  const about = data.hole === null ? slot : placeOfReport(state, data.hole, data.kind, slot);
+  let next = withDeviation(state, event, { kind: data.kind, hole: data.hole, slot: about, status, note: data.note });
   if (data.kind === 'differentUnknown') {
-    next = { ...next, retype: null };
-    if (slot && data.hole && makesUsed(state, { ...slot, hole: data.hole })) {
-      next = withUse(next, data.hole);
-    }
+    // Only of this hole: another whose figure was voided is still to be typed again, because it was pulled.
+    if (state.retype?.slot.hole === data.hole) next = { ...next, retype: null };
+    if (about && data.hole && makesUsed(state, about)) next = withUse(next, data.hole);
   }
   if (data.kind === 'strippedThread' && data.hole) next = { ...next, toRepair: [...next.toRepair, data.hole] };
   return next;
