@@ -28,7 +28,10 @@ export const proofRow = z.object({
 /** A proof's line in a list. */
 export type ProofRow = z.output<typeof proofRow>;
 
-/** A proof with its signed document: a compact JWS whose payload is the RFC 8785 text of the document. */
+/**
+ * A proof with its signed document: a compact JWS whose payload is the RFC 8785 text of the document, then the lines of
+ * the side sheet, a tilde behind every part (`openProof` of shared/proof takes it apart).
+ */
 export const proofWhole = proofRow.extend({ jws: z.string() });
 /** A proof with its signed document. */
 export type ProofWhole = z.output<typeof proofWhole>;
@@ -47,8 +50,9 @@ export const listProofs = defineEndpoint({
 });
 /**
  * Issues the proof of a finished walk; issuing again after a change is a new issue that supersedes the last. Errors:
- * `proof.blocked` 409 with `details.blocks` (`notSigned`, `notCountersigned`, `confirmationMissing`,
- * `confirmationRefused`, `quarantined`, `forked`, `blobsMissing`, `notIssuable`, `voided`), `walk.unknown` 404.
+ * `proof.blocked` 409 with `details.blocks` (`{code, details}`: `proof.notSigned`, `proof.notCountersigned`,
+ * `proof.notReleased`, `proof.confirmationMissing`, `proof.confirmationRefused`, `proof.quarantined`, `proof.forked`,
+ * `proof.blobsMissing`, `proof.notIssuable`, `proof.voided`), `walk.broken` 409 with `details.seq`, `walk.unknown` 404.
  */
 export const issueProof = defineEndpoint({
   method: 'POST',
@@ -56,7 +60,10 @@ export const issueProof = defineEndpoint({
   auth: 'office',
   right: 'keepProofs',
   params: idParams,
-  body: z.object({ note: z.string().trim().max(500).default('') }),
+  body: z.object({
+    note: z.string().trim().max(500).default(''),
+    language: z.enum(['en', 'es']).default('en'),
+  }),
   responses: { 201: proofWhole },
 });
 /** A proof. Errors: `proof.unknown` 404. */
