@@ -15,9 +15,8 @@ const isInstalled = {
   units: () => fs.existsSync('/usr/bin/units'),
 };
 
-/** What `npm start` needs from Debian, and what `npm test` needs. */
+/** What `npm start` needs from Debian. */
 export const startNeeds = ['postgresql'];
-export const testNeeds = Object.keys(isInstalled);
 
 /** @param {string} text */
 const say = (text) => process.stderr.write(`${text}\n`);
