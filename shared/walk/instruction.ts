@@ -7,6 +7,7 @@ import { targetOf, type Window } from '../quantity/window';
 import { judgeSetting } from '../judge/verdict';
 import type { Deviation } from './deviation';
 import type { PauseCause, ResumeWay, SlotRef } from './events';
+import { jointLeft, replacementDue } from './jointRework';
 import { offersFor, type Offers } from './offers';
 import {
   missingParts,
@@ -24,7 +25,6 @@ import {
   holeById,
   isSpent,
   isStriped,
-  looseningOrder,
   makesUsed,
   sameSlot,
   slotKey,
@@ -194,10 +194,8 @@ function pullOf(state: WalkState, slot: SlotRef, pass: Pass, stage: Stage, now: 
 }
 
 /** New fasteners and gaskets a joint restart still needs before anything is fitted (R6). */
-function restartParts(state: WalkState, rework: Rework, holes: HoleId[]): MissingPart[] {
-  const wanted = holes
-    .filter((hole) => newPartNeeded(state, hole, rework))
-    .map((hole) => fastenerOf(state.procedure, hole));
+function restartParts(state: WalkState, holes: HoleId[]): MissingPart[] {
+  const wanted = holes.filter((hole) => newPartNeeded(state, hole)).map((hole) => fastenerOf(state.procedure, hole));
   const short = [...new Set(wanted)].flatMap((type) => {
     const stock = stockOf(state, type.id);
     const need = wanted.filter((other) => other === type).length;
@@ -208,7 +206,7 @@ function restartParts(state: WalkState, rework: Rework, holes: HoleId[]): Missin
 }
 
 function jointReworkInstruction(state: WalkState, rework: Extract<Rework, { kind: 'joint' }>): Instruction {
-  const left = looseningOrder(state.procedure).filter((hole) => !rework.done.includes(hole));
+  const left = jointLeft(state, rework);
   const hole = left[0] ?? '';
   if (rework.phase === 'loosen') {
     return {
@@ -223,22 +221,21 @@ function jointReworkInstruction(state: WalkState, rework: Extract<Rework, { kind
   if (rework.phase === 'remove') return { kind: 'remove', hole, rework };
   const broken = state.toRepair[0];
   if (broken !== undefined) return { kind: 'repair', hole: broken };
-  const missing = restartParts(state, rework, left);
+  const missing = restartParts(state, left);
   if (missing.length > 0) return { kind: 'parts', missing };
   const step = stepsBeforeJoint(state).find((candidate) => !stepDone(state, candidate, null));
   return step ? { kind: 'step', step, hole: null, again: true } : fitInstruction(state, hole, rework);
 }
 
 /** A used single-use fastener never goes back in (R3); before final assembly old ones may (W1). */
-export function newPartNeeded(state: WalkState, hole: HoleId, rework: Rework): boolean {
-  if (rework.kind === 'hole' && rework.way === 'replace') return true;
-  return isSpent(state, hole);
+export function newPartNeeded(state: WalkState, hole: HoleId): boolean {
+  return replacementDue(state, hole) || isSpent(state, hole);
 }
 
 function fitInstruction(state: WalkState, hole: HoleId, rework: Rework): Instruction {
   const step = stepsOfHole(state, hole).find((candidate) => !stepDone(state, candidate, hole));
   if (step) return { kind: 'step', step, hole, again: true };
-  const part = newPartNeeded(state, hole, rework) ? 'new' : 'either';
+  const part = newPartNeeded(state, hole) ? 'new' : 'either';
   const type = fastenerOf(state.procedure, hole);
   const stock = stockOf(state, type.id);
   if (part === 'new' && stock < 1)

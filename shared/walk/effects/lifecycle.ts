@@ -12,6 +12,7 @@ import { makesUsed, stageOf, walkPasses } from '../slots';
 import { slotDone } from '../route';
 import type { Rework, WalkState } from '../state';
 import { withDeviation, withUse } from './change';
+import { withNewRework } from './rework';
 
 /** `walk.opened`. After earlier readings a final assembly begins with a joint restart, used fasteners counted (W1, R6). */
 export function walkOpened(state: WalkState, event: EventContext, data: WalkOpened): WalkState {
@@ -59,7 +60,7 @@ export function walkResumed(state: WalkState, event: EventContext, data: WalkRes
       : [],
   });
   if (turn && makesUsed(state, slot)) next = withUse(next, slot.hole);
-  if (rework) return { ...next, reworks: [...next.reworks, rework], resume: null };
+  if (rework) return withNewRework({ ...next, resume: null }, rework);
   return data.way === 'asInstructed' ? next : { ...next, resume: { slot, way: data.way } };
 }
 

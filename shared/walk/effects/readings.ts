@@ -7,6 +7,7 @@ import type { ReadingRecord, SlotOutcome, WalkState } from '../state';
 import { isLapsed } from '../../crib/due';
 import { withDeviation, withDeviations, withHole, withOutcome, withUse } from './change';
 import { closePasses, touchPass } from './passes';
+import { withoutEarlier } from './rework';
 
 const slotOf = (entry: SlotRef): SlotRef => ({
   pass: entry.pass,
@@ -162,9 +163,9 @@ export function readingVoided(state: WalkState, event: EventContext, reading: nu
       slots: record.before ? { ...slots, [slotKey(slot)]: record.before } : slots,
     };
   });
+  // What was decided about a figure that was never there goes with it, and what that had swept up is open again (R2).
+  for (const deviation of next.deviations.filter(isAbout(reading))) next = withoutEarlier(next, deviation);
   next = withDeviations(next, isAbout(reading), (deviation) => ({ ...deviation, status: 'withdrawn' }));
-  const gone = new Set(next.deviations.filter(isAbout(reading)).map((deviation) => deviation.id));
-  next = { ...next, reworks: next.reworks.filter((rework) => !gone.has(rework.deviation ?? '')) };
   const wasOff = kindOf(state, record.data, { kind: 'instructed', slot, before: record.before }) !== null;
   if (wasOff) {
     next = withDeviation(next, event, {

@@ -13,21 +13,22 @@ import { stepKey, stepsOfHole } from '../route';
 import { fastenerOf, looseningOrder, makesUsed, slotKey, slotsOfHole } from '../slots';
 import type { Rework, WalkState } from '../state';
 import { withDeviation, withDeviations, withHole, withOutcome, withUse } from './change';
+import { jointLeft } from '../jointRework';
 import { closePasses, reopenRounds } from './passes';
 
 const isRework = (choice: Choice): choice is 'restart' | 'replace' | 'restartJoint' =>
   choice === 'restart' || choice === 'replace' || choice === 'restartJoint';
 
-/** The rework that a decision begins; null where it begins none. */
-function reworkOf(deviation: Deviation, choice: Choice): Rework | null {
+/** The rework that a decision begins; null where it begins none. A hole that is empty already is only filled. */
+function reworkOf(state: WalkState, deviation: Deviation, choice: Choice): Rework | null {
   const { id, hole } = deviation;
   if (choice === 'restartJoint') return { kind: 'joint', deviation: id, phase: 'loosen', round: 1, done: [] };
   if (hole === null) return null;
-  if (choice === 'restart' || choice === 'replace')
-    return { kind: 'hole', way: choice, hole, deviation: id, phase: 'loosen' };
-  if (choice === 'otherFastener') return { kind: 'hole', way: 'replace', hole, deviation: id, phase: 'remove' };
-  if (choice === 'quarterTurnBack') return { kind: 'hole', way: 'quarter', hole, deviation: id, phase: 'loosen' };
-  return null;
+  const from = (phase: 'loosen' | 'remove') => (state.holes[hole]?.present === false ? 'fit' : phase);
+  const facts = { kind: 'hole', hole, deviation: id } as const;
+  if (choice === 'restart' || choice === 'replace') return { ...facts, way: choice, phase: from('loosen') };
+  if (choice === 'otherFastener') return { ...facts, way: 'replace', phase: from('remove') };
+  return choice === 'quarterTurnBack' ? { ...facts, way: 'quarter', phase: 'loosen' } : null;
 }
 
 const statusAfter = (choice: Choice): Deviation['status'] =>
@@ -44,7 +45,7 @@ function slotAfter(state: WalkState, deviation: Deviation, choice: Choice): Walk
 }
 
 /** Takes back an earlier decision that had not begun: its rework goes, and what it had swept up is open again (R2). */
-function withoutEarlier(state: WalkState, deviation: Deviation): WalkState {
+export function withoutEarlier(state: WalkState, deviation: Deviation): WalkState {
   const last = standingSettling(deviation);
   if (!last) return state;
   const reworks = state.reworks.filter((rework) => rework.deviation !== deviation.id);
@@ -106,15 +107,11 @@ export function deviationSettled(state: WalkState, event: EventContext, data: De
   );
   if (data.renews !== undefined) return next;
   next = stepsAfter(slotAfter(sweep(next, event, deviation, data), deviation, choice), deviation, choice);
-  const rework = reworkOf(deviation, choice);
-  if (rework?.kind === 'joint') next = { ...next, reworks: [rework] };
-  else if (rework)
-    next = { ...next, reworks: [...next.reworks.filter((other) => !isOfHole(other, rework.hole)), rework] };
+  const rework = reworkOf(next, deviation, choice);
+  if (rework) next = withNewRework(next, rework);
   if (choice === 'awaitPart') next = { ...next, paused: 'noPartLeft' };
   return closePasses(next, event);
 }
-
-const isOfHole = (rework: Rework, hole: HoleId): boolean => rework.kind === 'hole' && rework.hole === hole;
 
 /** `hold.cleared`: the deviation waits for a decision again. */
 export function holdCleared(state: WalkState, id: string): WalkState {
@@ -133,7 +130,7 @@ const noted = new Set(['wrenchDropped', 'other']);
 
 /**
  * The place a report is about: what is tightened now, at the hole that is named where a different one was tightened; for
- * any other hole than the one on the screen the last stage it took.
+ * any other hole than the one on the screen, and for a second click, the last stage it took.
  */
 function placeOfReport(
   state: WalkState,
@@ -141,7 +138,7 @@ function placeOfReport(
   kind: DeviationNoted['kind'],
   now: Deviation['slot'],
 ): Deviation['slot'] {
-  if (now?.hole === hole) return now;
+  if (now?.hole === hole && kind !== 'clickedTwice') return now;
   const own = slotsOfHole(state, hole);
   const same = now && own.find((slot) => slotKey(slot) === slotKey(now));
   if (kind === 'differentUnknown' && same) return same;
@@ -190,7 +187,8 @@ function letGo(state: WalkState, hole: HoleId, catchUpTo: string | null): WalkSt
     catchUpTo,
   }));
   const retype = state.retype?.slot.hole === hole ? null : state.retype;
-  return { ...withoutSteps(cleared, hole), retype, resume: null };
+  const resume = state.resume?.slot.hole === hole ? null : state.resume;
+  return { ...withoutSteps(cleared, hole), retype, resume };
 }
 
 /** Everything the joint had is gone: rounds, times, steps, and the gasket counts again (R6). */
@@ -205,22 +203,38 @@ function jointLetGo(state: WalkState): WalkState {
     passTimes: {},
     waitsSkipped: [],
     restarts: state.restarts + 1,
+    // Whatever else was decided is carried out by this; that a hole gets another fastener still holds.
+    reworks: state.reworks.filter(
+      (rework, index) => index === 0 || (rework.kind === 'hole' && rework.way === 'replace'),
+    ),
   };
 }
-
-type JointRework = Extract<Rework, { kind: 'joint' }>;
 
 function withRework(state: WalkState, change: Rework | null): WalkState {
   return { ...state, reworks: change ? [change, ...state.reworks.slice(1)] : state.reworks.slice(1) };
 }
 
-/** Adds a hole to the joint's phase; the last one opens the next phase. */
-function jointStep(state: WalkState, rework: JointRework, hole: HoleId): WalkState {
-  const done = [...rework.done, hole];
-  if (done.length < looseningOrder(state.procedure).length) return withRework(state, { ...rework, done });
-  if (rework.phase === 'loosen' && rework.round === 1) return withRework(state, { ...rework, round: 2, done: [] });
-  if (rework.phase === 'loosen') return withRework(jointLetGo(state), { ...rework, phase: 'remove', done: [] });
-  return withRework(state, rework.phase === 'remove' ? { ...rework, phase: 'fit', done: [] } : null);
+/** Opens the joint's next phase once nothing is left in this one. */
+function advanceJoint(state: WalkState): WalkState {
+  const rework = state.reworks[0];
+  if (rework?.kind !== 'joint' || jointLeft(state, rework).length > 0) return state;
+  if (rework.phase === 'fit') return withRework(state, null);
+  if (rework.phase === 'remove') return advanceJoint(withRework(state, { ...rework, phase: 'fit', done: [] }));
+  if (rework.round === 1) return advanceJoint(withRework(state, { ...rework, round: 2, done: [] }));
+  return advanceJoint(withRework(jointLetGo(state), { ...rework, phase: 'remove', done: [] }));
+}
+
+/**
+ * Puts a rework in its place. Earlier ones wait behind it until a fastener is really let go, so that they come back when
+ * the later decision is changed (R2). A hole's comes before a joint's that was let go, else after it.
+ */
+export function withNewRework(state: WalkState, rework: Rework): WalkState {
+  const { reworks } = state;
+  if (rework.kind === 'joint') return advanceJoint({ ...state, reworks: [rework, ...reworks] });
+  const same = reworks.findIndex((other) => other.kind === 'hole' && other.hole === rework.hole);
+  const joint = reworks.findIndex((other) => other.kind === 'joint' && other.phase !== 'loosen');
+  const at = same >= 0 ? same : joint >= 0 ? joint : reworks.length;
+  return { ...state, reworks: [...reworks.slice(0, at), rework, ...reworks.slice(at)] };
 }
 
 /** `fastener.loosened`. */
@@ -229,7 +243,7 @@ export function fastenerLoosened(state: WalkState, event: EventContext, data: Fa
   const next = { ...state, loosened };
   const rework = state.reworks[0];
   if (!rework) return next;
-  if (rework.kind === 'joint') return jointStep(next, rework, data.hole);
+  if (rework.kind === 'joint') return advanceJoint(withRework(next, { ...rework, done: [...rework.done, data.hole] }));
   if (rework.way === 'quarter') return withRework(quarterBack(next, rework.deviation), null);
   const free = letGo(reopenRounds(next, data.hole), data.hole, reached(state, data.hole));
   return withRework(free, { ...rework, phase: 'remove' });
@@ -249,7 +263,7 @@ function quarterBack(state: WalkState, deviationId: string): WalkState {
 export function fastenerRemoved(state: WalkState, hole: HoleId): WalkState {
   const out = withHole(state, hole, (value) => ({ ...value, present: false }));
   const rework = state.reworks[0];
-  if (rework?.kind === 'joint') return jointStep(out, rework, hole);
+  if (rework?.kind === 'joint') return advanceJoint(out);
   const cleared = withoutSteps(out, hole);
   return rework ? withRework(cleared, { ...rework, phase: 'fit' }) : cleared;
 }
@@ -268,9 +282,9 @@ export function fastenerFitted(state: WalkState, data: FastenerFitted): WalkStat
     const type = fastenerOf(state.procedure, data.hole).id;
     next = { ...next, drawn: { ...next.drawn, [type]: (next.drawn[type] ?? 0) + 1 } };
   }
-  const rework = state.reworks[0];
-  if (rework?.kind === 'joint') return jointStep(next, rework, data.hole);
-  return rework ? withRework(next, null) : next;
+  // The hole is filled: every decision about what was in it is carried out.
+  const reworks = next.reworks.filter((rework) => rework.kind === 'joint' || rework.hole !== data.hole);
+  return advanceJoint({ ...next, reworks });
 }
 
 /** `thread.repaired`. */
