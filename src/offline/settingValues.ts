@@ -38,6 +38,12 @@ export interface ClockRecord {
   serverOffset: number;
 }
 
+/** Who is signed in at this tablet. Outlives a kill: nobody signs in again inside a pass (W9). */
+export interface StandSession {
+  person: string;
+  since: string;
+}
+
 /** What is typed but not yet said: kept so that nothing entered is lost. */
 export interface Draft {
   savedAt: string;
@@ -51,7 +57,8 @@ export interface SettingValues {
   catalogue: Catalogue;
   pinKey: CryptoKey;
   clock: ClockRecord;
-  /** Whether a storage loss was seen and is still to be told (fault 20): walks the server holds further than we do. */
+  session: StandSession;
+  /** Walks of which this tablet lost events that the server has (fault 20); told until somebody has read it. */
   lostWalks: string[];
   [draft: `draft:${string}`]: Draft;
   [verifier: `pin:${string}`]: PinVerifier;

@@ -72,21 +72,39 @@ async function keepIdentity(deps: TabletAuthDeps, answer: EnrolledTablet): Promi
   return identity;
 }
 
-/**
- * Enrols this tablet by a one-time code, proving that it holds the private key. Refusals keep the server's code
- * (`enrolment.codeUsed` …); with `server.unreachable` nothing is lost and the same code may be tried again.
- */
-export async function enrolTablet(
-  deps: TabletAuthDeps,
-  { code, name }: { code: string; name: string },
-): Promise<Result<{ identity: TabletIdentity; bearer: Bearer }, ServerFailure>> {
-  const key = await deviceKeyOf(deps);
+/** A new key in place of the old one: one that the server knows already can enrol nothing. */
+async function freshDeviceKey({ settings, record }: TabletAuthDeps): Promise<DeviceKey> {
+  const made = await makeDeviceKey(record);
+  await settings.set('deviceKey', made);
+  return made;
+}
+
+/** A tablet that was enrolled before (and revoked, or moved to another shop) begins with a key of its own. */
+const keyToEnrol = async (deps: TabletAuthDeps): Promise<DeviceKey> =>
+  (await deps.settings.get('tablet')) ? freshDeviceKey(deps) : deviceKeyOf(deps);
+
+async function askToEnrol(deps: TabletAuthDeps, key: DeviceKey, { code, name }: { code: string; name: string }) {
   const proof = await signDetached(enrolmentProof(code, key.kid), signerOf(key));
-  const answer = await deps.client.call<typeof enrol>({
+  return deps.client.call<typeof enrol>({
     method: 'POST',
     path: '/api/tablets/enrol',
     body: { code, name, publicJwk: key.publicJwk, proof },
   });
+}
+
+/**
+ * Enrols this tablet by a one-time code, proving that it holds the private key. Refusals keep the server's code
+ * (`enrolment.codeUsed` …). Where the answer to an earlier enrolment got lost the server knows this key and refuses it:
+ * then a new key is made, for a new code.
+ */
+export async function enrolTablet(
+  deps: TabletAuthDeps,
+  wanted: { code: string; name: string },
+): Promise<Result<{ identity: TabletIdentity; bearer: Bearer }, ServerFailure>> {
+  let answer = await askToEnrol(deps, await keyToEnrol(deps), wanted);
+  if (answer.kind === 'refused' && answer.refusal.code === 'enrolment.keyTaken') {
+    answer = await askToEnrol(deps, await freshDeviceKey(deps), wanted);
+  }
   if (answer.kind !== 'done') return err(failureOf(answer));
   return ok({ identity: await keepIdentity(deps, answer.value), bearer: bearerOf(answer.value, deps.clock) });
 }
@@ -95,7 +113,7 @@ export async function enrolTablet(
 export async function enrolDemoTablet(
   deps: TabletAuthDeps,
 ): Promise<Result<{ identity: TabletIdentity; bearer: Bearer }, ServerFailure>> {
-  const key = await deviceKeyOf(deps);
+  const key = await keyToEnrol(deps);
   const answer = await deps.client.call<typeof demoTablet>({
     method: 'POST',
     path: '/api/demo/tablet',

@@ -4,7 +4,7 @@ import { verifyChain } from '@shared/record/chain';
 import { rowOf, rowsOf } from './database';
 import type { EventRow, HeadRow, OutboxRow } from './rows';
 import { openWalkLog } from './walkLog';
-import { UnknownWalk } from './walkWriter';
+import { UnknownWalk } from './walkStanding';
 import type { Failure } from './testing/failingIndexedDb';
 import { byTechnician, note, opened, openTestWalk, testTablet, WALK, type TestTablet } from './testing/tabletKit';
 import { keepBallast } from './ballast';

@@ -4,7 +4,7 @@ import { verifyChain } from '@shared/record/chain';
 import { rowsOf } from './database';
 import type { EventRow, OutboxRow } from './rows';
 import { sealerFor } from './seal';
-import { UnknownWalk } from './walkWriter';
+import { UnknownWalk } from './walkStanding';
 import { openWalkLog } from './walkLog';
 import {
   byTechnician,

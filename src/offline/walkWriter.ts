@@ -2,34 +2,19 @@ import { sealEvent } from '@shared/record/chain';
 import { CanonicalJsonError } from '@shared/record/canonicalJson';
 import { LONGEST_EVENT, ZERO_HASH, type Envelope, type SignedEvent } from '@shared/record/envelope';
 import { err, ok, type Result } from '@shared/kernel/result';
-import type { ProcedureDocument } from '@shared/procedure/procedure';
 import type { WalkCommand } from '@shared/walk/commands';
 import type { EventBody } from '@shared/walk/events';
 import { commitEvent } from './commitEvent';
+import { rowOf } from './database';
 import type { HeadRow, OutboxRow } from './rows';
 import { sealMeaning } from './sealMeaning';
 import { StorageError, storageErrorOf } from './storageError';
 import { isoOf } from './tabletClock';
 import { withSeal, type AppendRequest, type LogRefusal, type WalkAct } from './walkAct';
-import { loadChain, walkEventOf, type ChainBreak } from './walkChain';
+import { walkEventOf } from './walkChain';
+import { headAfter, readStanding, UnknownWalk, type Standing } from './walkStanding';
 import type { WalkLogDeps, WalkSnapshot, WalkStart } from './walkLog';
 import type { Moment } from './walkRules';
-
-/** Asked for a walk that is not on this tablet. */
-export class UnknownWalk extends Error {
-  constructor(readonly walk: string) {
-    super(`walk ${walk} is not on this tablet`);
-    this.name = 'UnknownWalk';
-  }
-}
-
-interface Standing<S> {
-  state: S;
-  head: HeadRow | null;
-  document: ProcedureDocument;
-  procedureHash: string;
-  broken: ChainBreak | null;
-}
 
 interface Written<S> {
   state: S;
@@ -58,21 +43,7 @@ export class WalkWriter<S, V> {
   }
 
   static async open<S, V>(deps: WalkLogDeps<S, V>, start: WalkStart, readOnly: boolean): Promise<WalkWriter<S, V>> {
-    return new WalkWriter(deps, start, await WalkWriter.#read(deps, start), readOnly);
-  }
-
-  static async #read<S, V>(deps: WalkLogDeps<S, V>, { walk, begin }: WalkStart): Promise<Standing<S>> {
-    const chain = await loadChain(deps.database, walk, deps.record);
-    if (!chain) {
-      if (!begin) throw new UnknownWalk(walk);
-      const state = deps.rules.initial(begin.document, begin.hash);
-      return { state, head: null, document: begin.document, procedureHash: begin.hash, broken: null };
-    }
-    const { head, events, broken } = chain;
-    if (!chain.document) throw new StorageError('storage.broken', new Error(`no document ${head.procedure}`));
-    const initial = deps.rules.initial(chain.document, head.procedure);
-    const state = events.reduce((before, event) => deps.rules.evolve(before, event), initial);
-    return { state, head, document: chain.document, procedureHash: head.procedure, broken };
+    return new WalkWriter(deps, start, await readStanding(deps, start), readOnly);
   }
 
   #moment(): Moment {
@@ -108,16 +79,21 @@ export class WalkWriter<S, V> {
     return turn;
   }
 
+  /** Reads again where the disk has gone on without us: another tab wrote, or events came from the server. */
   reload(): Promise<void> {
     return this.#queue(async () => {
-      this.#standing = await WalkWriter.#read(this.#deps, this.#start);
+      const { database } = this.#deps;
+      const { walk } = this.#start;
+      const stored = await database.read(['heads'], (transaction) => rowOf<HeadRow>(transaction, 'heads', walk));
+      if (stored?.hash === this.#standing.head?.hash) return;
+      this.#standing = await readStanding(this.#deps, this.#start);
       this.#tell();
     });
   }
 
   becomeWriter(): Promise<void> {
     return this.#queue(async () => {
-      this.#standing = await WalkWriter.#read(this.#deps, this.#start);
+      this.#standing = await readStanding(this.#deps, this.#start);
       this.#readOnly = false;
       this.#tell();
     });
@@ -197,28 +173,12 @@ export class WalkWriter<S, V> {
     try {
       const event = await sealEvent(envelope, signer, record);
       if (event.text.length > LONGEST_EVENT) return err({ code: 'log.tooLong' });
-      return ok({ state: after, event, head: this.#headAfter(envelope, event) });
+      return ok({ state: after, event, head: headAfter(this.#standing, envelope, event.hash) });
     } catch (error) {
       // Half a character or a zero in something pasted: the chain cannot hold it, and the person can mend it.
       if (error instanceof CanonicalJsonError) return err({ code: 'log.textNotWritable' });
       throw error;
     }
-  }
-
-  #headAfter(envelope: Envelope, event: SignedEvent): HeadRow {
-    const before = this.#standing.head;
-    const opened = envelope.data as Partial<Record<'job' | 'joint' | 'purpose', string>>;
-    const first = {
-      walk: envelope.walk,
-      branch: 0,
-      lineage: [{ branch: 0, from: 0 }],
-      procedure: this.#standing.procedureHash,
-      job: opened.job ?? '',
-      joint: opened.joint ?? '',
-      purpose: opened.purpose ?? '',
-      openedAt: envelope.at,
-    };
-    return { ...(before ?? first), next: envelope.seq + 1, hash: event.hash, lastAt: envelope.at };
   }
 
   async #save({ state, head, event }: Written<S>, request: AppendRequest, seal: OutboxRow['seal']) {
@@ -248,7 +208,7 @@ export class WalkWriter<S, V> {
   /** Memory may no longer match the disk: the disk is right. Whether the event got there is looked up, never assumed. */
   async #afterFailure(failure: StorageError, hash: string): Promise<Result<WalkSnapshot<S, V>, LogRefusal>> {
     try {
-      this.#standing = await WalkWriter.#read(this.#deps, this.#start);
+      this.#standing = await readStanding(this.#deps, this.#start);
     } catch (error) {
       return err({ code: error instanceof UnknownWalk ? 'storage.cleared' : storageErrorOf(error).code });
     }
