@@ -30,10 +30,16 @@ const pwa = VitePWA({
     orientation: 'any',
     theme_color: '#0b5f6b',
     background_color: '#eef0ed',
-    icons: [{ src: '/icon.svg', sizes: 'any', type: 'image/svg+xml', purpose: 'any' }],
+    icons: [
+      { src: '/icon.svg', sizes: 'any', type: 'image/svg+xml', purpose: 'any' },
+      { src: '/icon-192.png', sizes: '192x192', type: 'image/png', purpose: 'any' },
+      { src: '/icon-512.png', sizes: '512x512', type: 'image/png', purpose: 'any' },
+      { src: '/icon-maskable-512.png', sizes: '512x512', type: 'image/png', purpose: 'maskable' },
+    ],
   },
+  includeManifestIcons: false,
   injectManifest: {
-    globPatterns: ['**/*.{js,css,html,svg,woff2,wasm,webmanifest}'],
+    globPatterns: ['**/*.{js,css,html,svg,woff2,wasm}'],
     globIgnores: ['verify.html', 'assets/verify-*'],
     maximumFileSizeToCacheInBytes: 4 * 1024 * 1024,
   },
