@@ -178,8 +178,8 @@ const stripeAngle = (state: HeadState, angle: (turn: number) => number): number 
 function stripeBar(state: HeadState, { radius, k, angle }: Frame): Stripe | null {
   if (state.stripeDeg === null && state.pendingDeg === undefined) return null;
   const width = Math.max(5, 8.5 * k);
-  const outer = radius + 1.5 * k;
-  const height = Math.max(outer - radius * 0.62, 8);
+  const outer = radius + 2.5 * k;
+  const height = Math.max(outer - radius * 0.65, 8);
   const kind = state.fill === 'unknown' ? 'unknown' : state.pendingDeg === undefined ? 'paint' : 'dashed';
   return { angle: stripeAngle(state, angle), x: -width / 2, y: -outer, width, height, kind };
 }

@@ -18,7 +18,7 @@ const EDGE = 4;
 /** Sizes tried in turn, until one finds a free place. */
 const SIZES = [
   { width: 320, height: 256 },
-  { width: 230, height: 256 },
+  { width: 220, height: 256 },
   { width: 320, height: 164 },
 ];
 
