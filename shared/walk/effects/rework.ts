@@ -24,7 +24,10 @@ function reworkOf(state: WalkState, deviation: Deviation, choice: Choice): Rewor
   const { id, hole } = deviation;
   if (choice === 'restartJoint') return { kind: 'joint', deviation: id, phase: 'loosen', round: 1, done: [] };
   if (hole === null) return null;
-  const from = (phase: 'loosen' | 'remove') => (state.holes[hole]?.present === false ? 'fit' : phase);
+  const found = state.holes[hole];
+  const tightened = Object.keys(found?.slots ?? {}).length > 0;
+  const from = (untouched: 'loosen' | 'remove') =>
+    found?.present === false ? 'fit' : tightened ? 'loosen' : untouched;
   const facts = { kind: 'hole', hole, deviation: id } as const;
   if (choice === 'restart' || choice === 'replace') return { ...facts, way: choice, phase: from('loosen') };
   if (choice === 'otherFastener') return { ...facts, way: 'replace', phase: from('remove') };
