@@ -1,0 +1,18 @@
+import { useI18n } from 'vue-i18n';
+
+/** A refusal as the rules, the storage or the server give it. */
+export interface AnyRefusal {
+  code: string;
+  params?: Record<string, unknown>;
+}
+
+/** Says why something was not done: `errors.<code>`, else a plain sentence with the code. */
+export function useRefusalWords(): { refusalWords: (refusal: AnyRefusal) => string } {
+  const { t, te } = useI18n();
+  const refusalWords = ({ code, params = {} }: AnyRefusal): string => {
+    const key = `errors.${code}`;
+    const why = typeof params.why === 'string' && te(`crib.no.${params.why}`) ? t(`crib.short.${params.why}`) : '';
+    return te(key) ? t(key, { ...params, why }) : t('errors.unknown', { code });
+  };
+  return { refusalWords };
+}
