@@ -177,6 +177,7 @@ function pullOf(state: WalkState, slot: SlotRef, pass: Pass, stage: Stage, now: 
   const before = state.retype && mode === 'retype' ? state.retype.before : state.holes[slot.hole]?.slots[slotKey(slot)];
   const standing = before?.status === 'partial' || mode === 'retype' ? (before?.total ?? null) : null;
   const turn = stage.kind === 'turn' ? stage : null;
+  const goesOn = mode === 'pullAgain' || mode === 'finishByTotal';
   return {
     kind: 'pull',
     slot,
@@ -187,7 +188,7 @@ function pullOf(state: WalkState, slot: SlotRef, pass: Pass, stage: Stage, now: 
     mode,
     wrench: found.id,
     standing,
-    remaining: turn && window && mode === 'pullAgain' ? remainingWindow(window, standing) : null,
+    remaining: turn && window && goesOn ? remainingWindow(window, standing) : null,
     endTorque: { use: turn?.endTorque.use ?? 'unused', window: turn?.endTorque.windows?.[group] ?? null },
     monitor: turn?.monitor?.[group] ?? null,
   };

@@ -76,6 +76,7 @@ function turnRefusal(data: ReadingEntry, { mode, endTorque, standing }: PullInst
   if (data.endTorque && unitKind(data.endTorque.unit) !== 'torque') return refusal('wrongUnit');
   if (mode === 'pullAgain' && data.shows !== 'thisPull') return refusal('thisPullOnly');
   if (mode === 'finishByTotal' && data.shows !== 'total') return refusal('totalOnly');
+  if (data.source === 'marked' && data.shows !== 'total') return refusal('totalOnly');
   if (mode === 'finishByStripe' && data.source !== 'marked') return refusal('markedOnly');
   const behind = data.source === 'marked' && standing !== null && compareQuantities(data.value, standing) < 0;
   return behind && mode !== 'retype' ? refusal('totalBelowStanding') : null;
