@@ -2,7 +2,7 @@ import type { Deviation, DeviationKind } from '../deviation';
 import type { EventContext, ReadingElsewhere, ReadingEntry, ReadingTaken, SlotRef, StageDone } from '../events';
 import { judgeReading, pullsInAll } from '../judgeReading';
 import { placeReading, type Placement } from '../placement';
-import { makesUsed, slotKey, stageOf } from '../slots';
+import { makesUsed, sameSlot, slotKey, stageOf } from '../slots';
 import type { ReadingRecord, SlotOutcome, WalkState } from '../state';
 import { isLapsed } from '../../crib/due';
 import { withDeviation, withDeviations, withHole, withOutcome, withUse } from './change';
@@ -105,8 +105,8 @@ function applyReading(state: WalkState, event: EventContext, data: ReadingTaken,
     retype: null,
     begun: null,
   };
-  // What was begun at the hole on the screen waits on when another one was tightened (R5, W9).
-  if (state.resume?.slot.hole === data.hole) next = { ...next, resume: null };
+  // What was begun waits on while another hole was tightened, or an earlier figure is typed again (R5, R10, W9).
+  if (state.resume && sameSlot(state.resume.slot, placement.slot)) next = { ...next, resume: null };
   if (record.countsFor) next = withOutcome(next, record.countsFor, outcomeOf(event, data, placement, off !== null));
   if (makesUsed(state, placement.slot)) next = withUse(next, data.hole);
   next = touchPass(next, data.pass, event, slotOf(data));
