@@ -45,11 +45,14 @@ export const word = (key: PhraseKey, language: Locale): string => WORDS[language
 /** Makes a phrase; leaves `params` out where there are none, so that equal phrases are equal as JSON. */
 export const phrase = (key: PhraseKey, params?: Phrase['params']): Phrase => (params ? { key, params } : { key });
 
+/** A figure stays with its unit at the end of a line. */
+const together = (text: string): string => text.replaceAll(' ', '\u00a0');
+
 function valueText(value: PhraseParam, speaker: Speaker): string {
   if (typeof value === 'string') return value;
   if (typeof value === 'number') return String(value);
-  if ('quantity' in value) return formatQuantity(value.quantity, speaker.language);
-  if ('window' in value) return formatWindow(value.window, speaker.language);
+  if ('quantity' in value) return together(formatQuantity(value.quantity, speaker.language));
+  if ('window' in value) return together(formatWindow(value.window, speaker.language));
   if ('person' in value) return speaker.nameOf(value.person);
   if ('time' in value) return formatTime(value.time, speaker);
   if ('day' in value) return formatDay(value.day, speaker);

@@ -3,7 +3,7 @@ import type { Quantity } from '../quantity/quantity';
 import type { Verdict } from '../judge/verdict';
 import type { Window } from '../quantity/window';
 import type { Deviation, DeviationKind } from '../walk/deviation';
-import type { Meaning, Purpose, ReadingTaken, Source, WalkPolicy } from '../walk/events';
+import type { Choice, Meaning, Purpose, ReadingTaken, Source, WalkPolicy } from '../walk/events';
 import type { Phrase } from './phrase';
 
 /** Version of what `sheetOf` makes; an older sheet is still shown as it was signed, but no longer made again. */
@@ -106,6 +106,7 @@ export interface ProofPlace {
 
 /** One decision about a deviation. */
 export interface ProofSettling {
+  choice: Choice;
   said: Phrase;
   by: string;
   at: string;

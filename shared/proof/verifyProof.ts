@@ -120,7 +120,7 @@ async function checkRecord(
   const initial = initialWalk(document.procedure.document, procedure.hash);
   const again = await decideAgain(initial, events, record.roles, (done, total) => progress?.('rules', done / total));
   problems.push(...procedure.problems, ...again.problems);
-  problems.push(...(await confirmationProblems(events, record, shop, crypto)));
+  problems.push(...(await confirmationProblems(again.state, events, record, { shop, crypto })));
   const whole = events.length === record.events.length && again.checked === events.length;
   const sheet = whole ? madeSheet(document, again.state, events) : null;
   if (whole && !sheet) problems.push({ code: 'notFinished' });

@@ -22,7 +22,7 @@ const sourcesOf = (columns: ProofColumn[], rows: ProofRow[], kind: ProofColumn['
 
 const named = (sources: readonly Source[]): PhraseParam => ({
   list: sources.map((source) => ({ phrase: phrase(`source.${source}`) })),
-  join: 'and',
+  join: 'or',
 });
 
 /** *readings sent by the wrench*, or *torque typed, turns sent by the wrench* where the kinds differ. */
@@ -110,6 +110,14 @@ function ruleSentences(state: WalkState): Phrase[] {
   ];
 }
 
+/** One or two are told with both values; more are counted, and told below on the same page. */
+function changeSentences(state: WalkState, changes: readonly ProofLine[]): Phrase[] {
+  if (changes.length > 2) return [phrase('claim.changed', { n: changes.length })];
+  return changes.map(({ place, said }) =>
+    phrase('claim.changedOne', { where: whereOf(state, place.hole), said: { phrase: said } }),
+  );
+}
+
 /** The first paragraph: it claims what is known and leaves no deviation out (D1). */
 export function claimOf(
   state: WalkState,
@@ -126,6 +134,6 @@ export function claimOf(
     ...share('claim.marks', counts.marks),
     ...ruleSentences(state),
     ...deviationSentences(state),
-    ...(changes.length > 0 ? [phrase('claim.changed', { n: changes.length })] : []),
+    ...changeSentences(state, changes),
   ];
 }

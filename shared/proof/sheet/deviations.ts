@@ -99,6 +99,7 @@ function settledPhrase(state: WalkState, deviation: Deviation, settling: Settlin
 function settlingsOf(state: WalkState, deviation: Deviation): ProofSettling[] {
   const last = standingSettling(deviation);
   return deviation.settlings.map((settling) => ({
+    choice: settling.choice,
     said: settledPhrase(state, deviation, settling),
     by: settling.by,
     at: settling.at,

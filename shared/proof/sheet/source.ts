@@ -39,17 +39,20 @@ export const tagOf = (state: WalkState, wrench: string): string => state.wrenche
 /** The round whose readings are final: the last that was opened (R12). */
 export const lastRound = (state: WalkState, pass: string): number => state.rounds[pass] ?? 1;
 
-const labelParts = (label: string): [number, string] => {
-  const number = /^\d+/.exec(label)?.[0];
-  return [number === undefined ? Infinity : Number(number), label];
-};
+const labelParts = (label: string): (string | number)[] =>
+  (label.match(/\d+|\D+/g) ?? []).map((part) => (/^\d/.test(part) ? Number(part) : part));
 
-/** Labels as a person counts them: 2 before 10, then letters. */
+/** Labels as a person counts them: 2 before 10, S2 before S10, bare numbers before letters. */
 export function compareLabels(a: string, b: string): number {
-  const [numberA, textA] = labelParts(a);
-  const [numberB, textB] = labelParts(b);
-  if (numberA !== numberB) return numberA < numberB ? -1 : 1;
-  return textA < textB ? -1 : textA > textB ? 1 : 0;
+  const [partsA, partsB] = [labelParts(a), labelParts(b)];
+  for (const [index, partA] of partsA.entries()) {
+    const partB = partsB[index];
+    if (partB === undefined) return 1;
+    if (partA === partB) continue;
+    if (typeof partA !== typeof partB) return typeof partA === 'number' ? -1 : 1;
+    return partA < partB ? -1 : 1;
+  }
+  return partsA.length < partsB.length ? -1 : 0;
 }
 
 /** Holes that take part in any pass, by label. */

@@ -2,6 +2,7 @@ import { canonicalJson } from '../../record/canonicalJson';
 import type { PublicJwk, RecordCrypto } from '../../record/crypto';
 import { verifyDetached } from '../../record/signature';
 import type { WalkEvent } from '../../walk/events';
+import type { WalkState } from '../../walk/state';
 import type { ProofConfirmation, ProofRecord } from '../proofDocument';
 import type { ProofProblem } from './problem';
 
@@ -30,22 +31,27 @@ async function problemOf(
 ): Promise<ProofProblem | null> {
   const { seq } = event;
   const hash = record.events[seq]?.hash;
-  const said = record.confirmations.filter((one) => one.seq === seq && one.branch === event.branch);
+  const said = record.confirmations.filter((one) => one.hash === hash);
   const last = said.at(-1);
   if (!last) return { code: 'confirmationMissing', seq };
   for (const one of said) {
-    const about = one.hash === hash && one.person === event.by;
+    const about = one.seq === seq && one.person === event.by;
     if (!about || !(await isGenuine(one, shop, crypto))) return { code: 'confirmationForged', seq };
   }
   return last.result === 'accepted' ? null : { code: 'confirmationRefused', seq };
 }
 
+/** A signature that no longer stands (sent back, made anew) needs no PIN any more. */
+const stillCounts = (state: WalkState, { type, seq }: WalkEvent): boolean =>
+  (type !== 'walk.signed' && type !== 'walk.countersigned') ||
+  state.signatures.some((sign) => sign.seq === seq && sign.stands);
+
 /** Whether the shop confirmed the PIN behind every signature and decision; one made anew stands for the one before. */
 export async function confirmationProblems(
+  state: WalkState,
   events: readonly WalkEvent[],
   record: ProofRecord,
-  shop: Map<string, PublicJwk>,
-  crypto: RecordCrypto,
+  { shop, crypto }: { shop: Map<string, PublicJwk>; crypto: RecordCrypto },
 ): Promise<ProofProblem[]> {
   const sealed = events.flatMap((event) => {
     const seal = sealOf(event);
@@ -54,7 +60,8 @@ export async function confirmationProblems(
   const renewed = new Set(sealed.map(({ renews }) => renews));
   const problems: ProofProblem[] = [];
   for (const { event } of sealed) {
-    const problem = renewed.has(event.seq) ? null : await problemOf(event, record, shop, crypto);
+    const counts = !renewed.has(event.seq) && stillCounts(state, event);
+    const problem = counts ? await problemOf(event, record, shop, crypto) : null;
     if (problem) problems.push(problem);
   }
   return problems;
