@@ -48,10 +48,22 @@ export class FakeServer {
   /** One batch at a time, as the row lock of a walk makes it. */
   #turn: Promise<unknown> = Promise.resolve();
   readonly #record = webRecordCrypto();
-  readonly #key: { kid: string; publicJwk: PublicJwk };
+  #key: { kid: string; publicJwk: PublicJwk } | null;
 
-  constructor(key: { kid: string; publicJwk: PublicJwk }) {
+  constructor(key: { kid: string; publicJwk: PublicJwk } | null) {
     this.#key = key;
+  }
+
+  /** The tablet with this key is enrolled from now on. */
+  admit(key: { kid: string; publicJwk: PublicJwk }): void {
+    this.#key = key;
+  }
+
+  /** A bearer that is taken. */
+  issueToken(): string {
+    const token = `token-${++this.#issued}`;
+    this.tokens.add(token);
+    return token;
   }
 
   /** Everything that is signed in has to sign in again (fault 24). */
@@ -70,20 +82,22 @@ export class FakeServer {
     if (this.revoked) return refused(403, 'tablet.revoked');
     const bearer = (request.headers.get('authorization') ?? '').replace('Bearer ', '');
     if (!this.tokens.has(bearer)) return refused(401, 'token.expired');
-    return this.#inside(request, pathname);
+    return this.inside(request, pathname);
   }
 
   async #token({ signature }: { signature: string }): Promise<Response> {
     if (this.revoked) return refused(403, 'tablet.revoked');
-    const keys = new Map([[this.#key.kid, this.#key.publicJwk]]);
+    const keys = new Map(this.#key ? [[this.#key.kid, this.#key.publicJwk]] : []);
     const right = await verifyDetached(tokenProof('c1'), signature, keys, this.#record);
     if (!right.ok) return refused(401, 'challenge.badSignature');
-    const token = `token-${++this.#issued}`;
-    this.tokens.add(token);
-    return Response.json({ token, expiresAt: new Date(Date.parse(this.answer.now) + 900_000).toISOString() });
+    return Response.json({
+      token: this.issueToken(),
+      expiresAt: new Date(Date.parse(this.answer.now) + 900_000).toISOString(),
+    });
   }
 
-  async #inside(request: Request, pathname: string): Promise<Response> {
+  /** What an enrolled tablet may ask for. */
+  protected async inside(request: Request, pathname: string): Promise<Response> {
     const [, walk] = /^\/api\/tablet\/walks\/([^/]+)\/events$/.exec(pathname) ?? [];
     if (walk) {
       const body = (await request.json()) as { events: SignedEvent[]; seals: Seal[] };

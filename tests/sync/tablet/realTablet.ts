@@ -1,0 +1,69 @@
+import type { WrenchSnapshot } from '@shared/crib/wrench';
+import { tabletClient } from '@/api/tabletClient';
+import { Tablet } from '@/offline/tablet';
+import type { TabletWorld } from '@/offline/tabletWorld';
+import { failingIndexedDb, type FailingIndexedDb } from '@/offline/testing/failingIndexedDb';
+import { memoryHolds } from '@/offline/testing/memoryHolds';
+import { handClock } from '@/offline/testing/tabletKit';
+import { unreliableNetwork, type Fate } from '@/offline/testing/unreliableNetwork';
+import type { FakeShop } from './fakeShop';
+
+/** A torque-angle wrench that suits every stage of the demo's procedures. Values invented. */
+export const wideWrench: WrenchSnapshot = {
+  id: '0190f0a0-0000-7000-8000-0000000000f3',
+  tag: 'W-03',
+  serial: 'T20-112',
+  kind: 'torqueAngle',
+  drive: '1/2 in',
+  range: { low: '10', high: '340', unit: 'N.m' },
+  unit: 'N.m',
+  resolution: { torque: '0.1', angle: '1' },
+  accuracy: { cw: '3', ccw: '4' },
+  turnAccuracy: '2',
+  due: { date: '2027-01-01', cycles: null },
+  cycles: 0,
+  state: 'inService',
+  certificate: 'K-1',
+};
+
+/** The whole tablet as it runs in a browser, on a disk in memory, before a shop that a network may hide. */
+export interface RealTablet {
+  tablet: Tablet;
+  disk: FailingIndexedDb;
+  clock: ReturnType<typeof handClock>;
+  network: { fateOf: (path: string) => Fate; online: boolean };
+}
+
+/** Starts it; with `before`, the same tablet after it was killed: same disk, another boot. */
+export async function realTablet(shop: FakeShop, before?: RealTablet): Promise<RealTablet> {
+  const disk = before?.disk ?? failingIndexedDb();
+  if (before) {
+    before.tablet.sync.stop();
+    disk.restart();
+  }
+  const clock = before ? { ...before.clock, boot: `${before.clock.boot}x` } : handClock();
+  const network: RealTablet['network'] = { fateOf: () => 'fine', online: before?.network.online ?? true };
+  const fetch = unreliableNetwork(shop, (path) => {
+    shop.answer = { ...shop.answer, now: new Date(clock.now()).toISOString() };
+    return network.fateOf(path);
+  });
+  const world: TabletWorld = {
+    factory: disk.factory,
+    holds: memoryHolds(),
+    client: tabletClient({ fetch }),
+    clock,
+    storage: undefined,
+    random: () => 0.5,
+    isOnline: () => network.online,
+    // Nothing happens by itself: a test pokes.
+    setTimer: () => null,
+    clearTimer: () => undefined,
+    tell: () => undefined,
+    listen: () => undefined,
+    version: 'test',
+  };
+  const tablet = new Tablet(world);
+  await tablet.start();
+  await tablet.sync.poke();
+  return { tablet, disk, clock, network };
+}
