@@ -19,15 +19,20 @@ import { closePasses, reopenRounds } from './passes';
 const isRework = (choice: Choice): choice is 'restart' | 'replace' | 'restartJoint' =>
   choice === 'restart' || choice === 'replace' || choice === 'restartJoint';
 
+/** Whether anything was pulled at this fastener since it was last let go; a voided figure was pulled all the same. */
+function isTightened(state: WalkState, hole: HoleId): boolean {
+  const found = state.holes[hole];
+  const pulled = state.readings.some(({ data, attempt }) => data.hole === hole && attempt === found?.attempt);
+  return pulled || Object.keys(found?.slots ?? {}).length > 0 || state.resume?.slot.hole === hole;
+}
+
 /** The rework that a decision begins; null where it begins none. A hole that is empty already is only filled. */
 function reworkOf(state: WalkState, deviation: Deviation, choice: Choice): Rework | null {
   const { id, hole } = deviation;
   if (choice === 'restartJoint') return { kind: 'joint', deviation: id, phase: 'loosen', round: 1, done: [] };
   if (hole === null) return null;
-  const found = state.holes[hole];
-  const tightened = Object.keys(found?.slots ?? {}).length > 0;
-  const from = (untouched: 'loosen' | 'remove') =>
-    found?.present === false ? 'fit' : tightened ? 'loosen' : untouched;
+  const present = state.holes[hole]?.present !== false;
+  const from = (untouched: 'loosen' | 'remove') => (!present ? 'fit' : isTightened(state, hole) ? 'loosen' : untouched);
   const facts = { kind: 'hole', hole, deviation: id } as const;
   if (choice === 'restart' || choice === 'replace') return { ...facts, way: choice, phase: from('loosen') };
   if (choice === 'otherFastener') return { ...facts, way: 'replace', phase: from('remove') };
