@@ -22,12 +22,12 @@ export interface Deps {
   folds: FoldCache;
   log: Logger;
   /** The server's clock, and milliseconds since `boot` for the events the office writes. */
-  clock: { now(): Date; mono(): number; boot: string };
+  clock: { now: () => Date; mono: () => number; boot: string };
   ids: {
     /** A new row's id, growing with time. */
-    uuid(): string;
+    uuid: () => string;
     /** Random base64url text of so many bytes. */
-    token(bytes: number): string;
+    token: (bytes: number) => string;
   };
 }
 

@@ -11,10 +11,7 @@ import { openClient } from './tenancy/client';
 
 /** The real world of the server. */
 export const makeDeps = (config: Config): Deps => {
-  const log = pino({
-    level: config.logLevel,
-    redact: ['req.headers.authorization', 'req.headers.cookie', 'res.headers["set-cookie"]'],
-  });
+  const log = pino({ level: config.logLevel });
   const clock = systemClock();
   return {
     config,

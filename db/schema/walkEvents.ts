@@ -70,6 +70,8 @@ export const branchChoices = pgTable(
     walkId: ref('walk_id').notNull(),
     nth: whole('nth').notNull(),
     branch: whole('branch').notNull(),
+    /** How far each branch went when it was chosen: what comes beyond that has to be chosen about again. */
+    heads: json<Record<string, number>>('heads').notNull().default({}),
     byPerson: ref('by_person').notNull(),
     reason: text('reason').notNull(),
     at: moment('at').notNull(),

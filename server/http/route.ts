@@ -17,9 +17,9 @@ export interface Input<E extends EndpointDefinition> {
   deps: Deps;
   visit: Visit;
   /** Sets (or with null clears) the session cookie of the answer. */
-  setSession(token: string | null): void;
+  setSession: (token: string | null) => void;
   /** Sets a header of the answer. */
-  setHeader(name: string, value: string): void;
+  setHeader: (name: string, value: string) => void;
 }
 
 /** A success, or a refusal before which what was written is committed. */

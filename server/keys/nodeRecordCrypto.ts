@@ -3,6 +3,14 @@ import type { PublicJwk, RecordCrypto } from '@shared/record/crypto';
 
 const MOST_KEYS_KEPT = 1_000;
 
+const publicKeyOf = (jwk: PublicJwk): KeyObject | null => {
+  try {
+    return createPublicKey({ key: { ...jwk }, format: 'jwk' });
+  } catch {
+    return null; // a point off the curve verifies nothing
+  }
+};
+
 /** Imports public keys once: a batch is verified with one key over hundreds of events. */
 const keyImporter = () => {
   const imported = new Map<string, KeyObject | null>();
@@ -11,12 +19,7 @@ const keyImporter = () => {
     const known = imported.get(name);
     if (known !== undefined) return known;
     if (imported.size >= MOST_KEYS_KEPT) imported.clear();
-    let key: KeyObject | null = null;
-    try {
-      key = createPublicKey({ key: { kty, crv, x, y }, format: 'jwk' });
-    } catch {
-      key = null; // a point off the curve verifies nothing
-    }
+    const key = publicKeyOf({ kty, crv, x, y });
     imported.set(name, key);
     return key;
   };

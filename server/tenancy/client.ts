@@ -8,11 +8,13 @@ export interface DatabaseClient {
 }
 
 /**
- * Opens the pool. A connection that breaks while idle (the database was killed) is told to `onLost` and replaced at the
- * next request: the server goes on by itself (fault 5).
+ * Opens the pool. A connection that breaks (the database was killed) is told to `onLost` and replaced at the next
+ * request: the server goes on by itself (fault 5). The pool listens only to connections that are idle; one that breaks
+ * inside a transaction would otherwise be an error nobody hears, which ends the process.
  */
 export const openClient = (url: string, onLost: (error: Error) => void, most = 20): DatabaseClient => {
   const pool = new pg.Pool({ connectionString: url, max: most, connectionTimeoutMillis: 5_000 });
-  pool.on('error', onLost);
+  pool.on('error', () => undefined); // said by the connection itself, below
+  pool.on('connect', (connection) => void connection.on('error', onLost));
   return { db: drizzle(pool), close: () => pool.end() };
 };

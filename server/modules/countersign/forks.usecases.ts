@@ -1,9 +1,11 @@
 import type { OfficeWalk } from '@shared/contracts/walks.contract';
 import type { Deps } from '../../deps';
 import type { OfficeCaller } from '../../http/callers';
-import { AppError, conflict, notFound } from '../../http/errors';
+import type { AppError } from '../../http/errors';
+import { conflict, notFound } from '../../http/errors';
 import type { ShopTx } from '../../tenancy/withShop';
 import { writeAudit } from '../audit/audit.repository';
+import { headsOf } from '../sync/branches';
 import { refreshWalk } from '../sync/refreshWalk';
 import { officeWalk } from '../walks/officeWalks.usecases';
 import { insertChoice, insertSettling, latestChoice, quarantineOfWalk, updateWalk } from '../walks/walks.repository';
@@ -25,7 +27,15 @@ export const chooseBranch = async (
   const at = deps.clock.now();
   const nth = ((await latestChoice(tx, request.walk))?.nth ?? -1) + 1;
   const { walk: walkId, branch, reason } = request;
-  await insertChoice(tx, { walkId, nth, branch, byPerson: caller.person.id, reason, at });
+  await insertChoice(tx, {
+    walkId,
+    nth,
+    branch,
+    heads: headsOf(standing.branches),
+    byPerson: caller.person.id,
+    reason,
+    at,
+  });
   await updateWalk(tx, walkId, { branch });
   await writeAudit(deps, tx, {
     person: caller.person.id,

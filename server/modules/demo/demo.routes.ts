@@ -2,8 +2,7 @@ import type { Router } from 'express';
 import * as contract from '@shared/contracts/demo.contract';
 import type { Deps } from '../../deps';
 import { publicRoute } from '../../http/route';
-import { demoShop } from './demo.repository';
-import { enrolDemoTablet, showDoors } from './demo.usecases';
+import { demoShop, enrolDemoTablet, showDoors } from './demo.usecases';
 
 /** Adds the demo's doors. Called only in the demo: elsewhere these addresses do not exist. */
 export const demoRoutes = (router: Router, deps: Deps): void => {

@@ -11,6 +11,8 @@ import { admitTablet } from '../tablets/tablets.usecases';
 import { makeTabletToken } from '../tablets/tabletTokens';
 import { demoAccounts, halfWalked } from './demo.repository';
 
+export { demoShop } from './demo.repository';
+
 /** What the two doors show. */
 export const showDoors = async (tx: ShopTx) => {
   const shop = await findShop(tx);

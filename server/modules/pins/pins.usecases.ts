@@ -1,5 +1,5 @@
 import { compactDecrypt } from 'jose';
-import { z } from 'zod';
+import type { z } from 'zod';
 import type { Deps } from '../../deps';
 import { growingWait } from '../../http/growingWait';
 import { secretFits } from '../../keys/passwords';

@@ -1,4 +1,5 @@
-import { AppError, conflict, notFound } from '../../http/errors';
+import type { AppError } from '../../http/errors';
+import { conflict, notFound } from '../../http/errors';
 import type { IssueBlock } from './issueBlocks';
 
 export const proofUnknown = (): AppError => notFound('proof.unknown', 'There is no such proof.');

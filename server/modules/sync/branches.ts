@@ -20,8 +20,7 @@ export const pathTo = (branches: readonly Branch[], place: Place): Stretch[] => 
 };
 
 /** Where the events of a batch go. */
-export type Target =
-  { kind: 'append'; branch: number } | { kind: 'open'; branch: Omit<Branch, 'next' | 'head' | 'lastReceived'> };
+export type Target = { kind: 'append'; branch: number } | { kind: 'open'; branch: Omit<Branch, 'next' | 'head'> };
 
 /**
  * Where an event with this parent goes: on at the head it follows, else on a new branch from there, which is a fork
@@ -39,16 +38,24 @@ export const targetFor = (branches: readonly Branch[], parent: (Place & { hash: 
   return { kind: 'open', branch: { branch: number, fromBranch, fromSeq, fromHash, how: 'fork' } };
 };
 
+/** How far each branch goes: what a choice between them has seen. */
+export const headsOf = (branches: readonly Branch[]): Record<string, number> =>
+  Object.fromEntries(branches.map(({ branch, next }) => [branch, next]));
+
 /**
- * Whether some branch goes on beside the one that stands, with events that came after the last choice: then a person has
- * to say which stands.
+ * Whether some branch goes on beside the one that stands, further than it did at the last choice: then a person has to
+ * say which stands.
  */
-export const isForked = (branches: readonly Branch[], standing: number, chosenAt: Date | null): boolean => {
+export const isForked = (
+  branches: readonly Branch[],
+  standing: number,
+  seen: Readonly<Record<string, number>>,
+): boolean => {
   const head = branches.find((one) => one.branch === standing);
   if (!head) return false;
   const path = new Map(pathTo(branches, { branch: standing, seq: head.next - 1 }).map((one) => [one.branch, one.upTo]));
   return branches.some((one) => {
     const goesBeside = one.next - 1 > (path.get(one.branch) ?? one.fromSeq);
-    return goesBeside && (!chosenAt || (one.lastReceived !== null && one.lastReceived > chosenAt));
+    return goesBeside && one.next > (seen[one.branch] ?? 0);
   });
 };

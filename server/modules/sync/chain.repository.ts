@@ -19,7 +19,6 @@ export interface Branch {
   how: 'first' | 'fork' | 'takeOver';
   next: number;
   head: string;
-  lastReceived: Date | null;
 }
 
 /** Lets one request after the other write a walk: of two that bring the same batch, the second finds it stored (fault 7). */
@@ -46,13 +45,11 @@ export const branchesOf = async (tx: ShopTx, walk: string): Promise<Branch[]> =>
     how: Branch['how'];
     next: number | null;
     head: string | null;
-    last_received: Date | null;
   }>(sql`
-    select b.branch, b.from_branch, b.from_seq, b.from_hash, b.how, e.seq + 1 as next, e.hash as head,
-      e.received_at as last_received
+    select b.branch, b.from_branch, b.from_seq, b.from_hash, b.how, e.seq + 1 as next, e.hash as head
     from walk_branches b
     left join lateral (
-      select seq, hash, received_at from walk_events e
+      select seq, hash from walk_events e
       where e.shop_id = b.shop_id and e.walk_id = b.walk_id and e.branch = b.branch order by seq desc limit 1
     ) e on true
     where b.shop_id = ${tx.shop} and b.walk_id = ${walk} order by b.branch`);
@@ -64,7 +61,6 @@ export const branchesOf = async (tx: ShopTx, walk: string): Promise<Branch[]> =>
     how: row.how,
     next: row.next ?? row.from_seq + 1,
     head: row.head ?? row.from_hash,
-    lastReceived: row.last_received === null ? null : new Date(row.last_received),
   }));
 };
 

@@ -80,7 +80,7 @@ export const refreshWalk = async (
     ...walkSummary(state),
     nextSeq: head?.next ?? row.nextSeq,
     headHash: head?.head ?? row.headHash,
-    forked: isForked(branches, row.branch, choice?.at ?? null),
+    forked: isForked(branches, row.branch, choice?.heads ?? {}),
     quarantined: waiting.length,
     refusedSeals: seals.refused.length,
     missingBlobs: (await missingBlobsOf(tx, walk)).length,

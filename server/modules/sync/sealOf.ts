@@ -1,4 +1,5 @@
 import type { WalkEvent } from '@shared/walk/events';
+import { sealMeaning } from '@shared/walk/sealMeaning';
 
 /** A seal that an event carries: its hash, whose PIN it should hold, what for, and which earlier one it renews. */
 export interface EventSeal {
@@ -13,29 +14,28 @@ export interface EventSeal {
  * counts for no other.
  */
 export const sealOf = (event: WalkEvent): EventSeal | null => {
+  const carried = carrierOf(event);
+  if (!carried?.seal) return null;
+  return {
+    seal: carried.seal,
+    person: carried.by ?? event.by,
+    meaning: sealMeaning(event),
+    renews: carried.renews ?? null,
+  };
+};
+
+const carrierOf = (event: WalkEvent): { seal?: string; renews?: number; by?: string } | null => {
   switch (event.type) {
     case 'walk.signed':
     case 'walk.countersigned':
-      return {
-        seal: event.data.seal,
-        person: event.by,
-        meaning: event.data.meaning,
-        renews: event.data.renews ?? null,
-      };
     case 'walk.sentBack':
-      return { seal: event.data.seal, person: event.by, meaning: event.type, renews: null };
+    case 'walk.voided':
     case 'deviation.settled':
     case 'wait.skipped':
-    case 'walk.voided': {
-      const { seal } = event.data;
-      const renews = 'renews' in event.data ? (event.data.renews ?? null) : null;
-      return seal === undefined ? null : { seal, person: event.by, meaning: event.type, renews };
-    }
-    case 'wrench.taken': {
-      const { override } = event.data;
-      if (!override) return null;
-      return { seal: override.seal, person: override.by, meaning: event.type, renews: override.renews ?? null };
-    }
+    case 'reading.voided':
+      return event.data;
+    case 'wrench.taken':
+      return event.data.override ?? null;
     default:
       return null;
   }

@@ -2,13 +2,14 @@ import { z } from 'zod';
 import { hasRight } from '@shared/people/roles';
 import type { Deps } from '../../deps';
 import type { TabletCaller } from '../../http/callers';
-import { AppError } from '../../http/errors';
+import type { AppError } from '../../http/errors';
 import type { ShopTx } from '../../tenancy/withShop';
 import { writeAudit } from '../audit/audit.repository';
 import { findPerson } from '../people/people.repository';
 import { pinError, sealElsewhere, sealUnreadable } from '../pins/pins.errors';
 import { checkPin, openSeal } from '../pins/pins.usecases';
 import { insertChoice, latestChoice, updateWalk } from '../walks/walks.repository';
+import { headsOf } from './branches';
 import { lockWalk } from './chain.repository';
 import { nextPlace, writeOfficeEvent } from './officeEvent';
 import { refreshWalk, standingWalk, type StandingWalk } from './refreshWalk';
@@ -66,7 +67,15 @@ const takeByForce = async (deps: Deps, tx: ShopTx, tablet: TabletCaller, standin
   await writeOfficeEvent(deps, tx, { standing, by, body, target: { kind: 'open', branch: from } });
   const nth = ((await latestChoice(tx, row.id))?.nth ?? -1) + 1;
   const at = deps.clock.now();
-  await insertChoice(tx, { walkId: row.id, nth, branch, byPerson: by, reason: 'takenOver', at });
+  await insertChoice(tx, {
+    walkId: row.id,
+    nth,
+    branch,
+    heads: headsOf(branches),
+    byPerson: by,
+    reason: 'takenOver',
+    at,
+  });
   const use = { id: deps.ids.uuid(), personId: by, walkId: row.id, branch, seq, meaning: 'takeOver' };
   await insertPinUse(tx, { ...use, at, tablet: tablet.id });
   await updateWalk(tx, row.id, { branch });

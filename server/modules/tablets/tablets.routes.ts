@@ -26,7 +26,8 @@ export const tabletRoutes = (router: Router, deps: Deps): void => {
       throw unknownCode();
     }
     const enrolled = await inShop(shop, (tx) => tablets.enrolTablet(deps, tx, body)).catch((error: unknown) => {
-      if (error instanceof AppError) deps.failures.fail(key, now);
+      // Whoever knows a code that is used or run out does not guess.
+      if (error instanceof AppError && error.status === 404) deps.failures.fail(key, now);
       throw error;
     });
     deps.failures.clear(key);

@@ -140,7 +140,7 @@ export const latestChoice = async (tx: ShopTx, walk: string) => {
 /** Stores which branch stands from now on. */
 export const insertChoice = async (
   tx: ShopTx,
-  choice: { walkId: string; nth: number; branch: number; byPerson: string; reason: string; at: Date },
+  choice: Omit<typeof branchChoices.$inferSelect, 'shopId'>,
 ): Promise<void> => {
   await tx.db.insert(branchChoices).values({ shopId: tx.shop, ...choice });
 };

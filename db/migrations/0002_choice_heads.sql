@@ -1,0 +1,1 @@
+ALTER TABLE "branch_choices" ADD COLUMN "heads" jsonb DEFAULT '{}'::jsonb NOT NULL;
