@@ -1,0 +1,122 @@
+import type { officeFrame as en } from '../en/officeFrame';
+import type { SameKeys } from '../sameKeys';
+
+/** Palabras que usan todas las páginas de la oficina. */
+export const officeFrame: SameKeys<typeof en> = {
+  skip: 'Saltar a la página',
+  sortBy: 'Ordenar por esta columna',
+  optional: 'opcional',
+  none: 'ninguno',
+  any: 'cualquiera',
+  change: 'Cambiar',
+  show: 'Mostrar',
+  copy: 'Copiar',
+  copied: 'Copiado',
+  print: 'Imprimir',
+  clearFilters: 'Quitar búsqueda y filtros',
+  shown: '{n} en la lista',
+  shownOf: '{n} de {all}',
+  urgentFirst: 'lo más urgente primero',
+  nothingFits: {
+    title: 'Nada coincide',
+    text: 'Ninguna fila coincide con lo que se busca y elige arriba.',
+  },
+  keys: {
+    move: 'mover',
+    opens: 'abre',
+    finds: 'busca',
+  },
+  looks: {
+    language: 'Idioma',
+    theme: 'Claro u oscuro',
+    system: 'Como el sistema',
+    light: 'Claro',
+    dim: 'Oscuro',
+  },
+  rail: {
+    name: 'Oficina',
+    jobs: 'Trabajos',
+    procedures: 'Procedimientos',
+    crib: 'Pañol',
+    countersign: 'Segunda firma',
+    proofs: 'Pruebas',
+    shop: 'Taller',
+    pin: 'Su PIN',
+    waiting: 'en espera',
+    toConfirm: 'usos por confirmar',
+    signOut: 'Cerrar sesión',
+  },
+  role: {
+    technician: 'mecánico',
+    supervisor: 'encargado',
+    clerk: 'administrativo',
+    keeper: 'pañolero',
+    admin: 'administrador',
+  },
+  duration: {
+    seconds: '{n} segundo | {n} segundos',
+    minutes: '{n} minuto | {n} minutos',
+    hours: '{n} hora | {n} horas',
+    days: '{n} día | {n} días',
+  },
+  signIn: {
+    title: 'Entrar en la oficina',
+    email: 'Correo electrónico',
+    password: 'Contraseña',
+    shop: 'Taller',
+    shopHelp: 'Este correo y esta contraseña valen en varios talleres: elija uno y entre de nuevo.',
+    go: 'Entrar',
+    wait: 'Demasiadas contraseñas incorrectas seguidas. Espere {wait} y pruebe otra vez. La espera crece con cada error; el taller nunca queda bloqueado.',
+  },
+  demo: {
+    title: 'Demostración: {shop}',
+    text: 'Todas las personas y cifras son inventadas. Un toque inicia la sesión; el PIN es lo que pide la segunda firma.',
+    pin: 'PIN {pin}',
+  },
+  unknownPage: {
+    title: 'Esa página no existe',
+    text: 'La dirección no lleva a ningún sitio. La barra de la izquierda lleva a todo lo que hay.',
+    back: 'A su primera página',
+  },
+  failure: {
+    kept: 'No se ha cambiado nada.',
+    unknown: 'El servidor lo ha rechazado ({code}).',
+  },
+  todo: {
+    later: 'Pruebe otra vez dentro de un momento. Si sigue igual, avise a quien lleva el servidor.',
+    look: 'Vuelva atrás y mire si algo ha cambiado mientras tanto.',
+    office_unreachable: 'Mire si este ordenador está en la red del taller y pruebe otra vez.',
+    office_notOurs:
+      'Ha contestado algo entre este equipo y el servidor, a menudo una página de acceso de la red. Abra una vez cualquier página web y pruebe otra vez.',
+    session_missing: 'Entre otra vez. Lo que escribió se conserva.',
+    session_expired: 'Entre otra vez. Lo que escribió se conserva.',
+    csrf_wrong: 'Recargue la página y envíe otra vez. Lo que escribió se conserva.',
+    walk_headMoved: 'La página muestra el registro tal como está ahora: mire otra vez y luego decida.',
+    right_missing: 'Pida a alguien con ese permiso, o a su administrador.',
+  },
+  violation: {
+    required: 'Esto hace falta.',
+    tooLong: 'Como mucho {most} caracteres.',
+    format: 'Así no se puede leer.',
+    email: 'Esto no es una dirección de correo.',
+    decimal: 'Solo cifras, con punto para los decimales: 84210 o 3120.5.',
+    pin: {
+      sixDigits: 'Seis cifras.',
+      different: 'Los dos PIN no son iguales.',
+      trivial: 'Demasiado fácil de adivinar: ni cifras seguidas ni repetidas.',
+    },
+    job: {
+      numberTaken: 'Otro trabajo tiene ya este número. No se ha abierto nada; dele otro número o abra aquel trabajo.',
+    },
+    text: {
+      notWellFormed: 'Contiene un carácter que no se puede guardar.',
+    },
+    vin: {
+      letter: 'Ningún VIN lleva la letra {character} (lugar {at}): debe ser {meant}.',
+      character: '«{character}» en el lugar {at} no es letra ni cifra.',
+      length: '{n} de 17 caracteres.',
+      letters: 'Ningún VIN lleva las letras I, O y Q.',
+      characters: 'Solo letras y cifras.',
+    },
+  },
+};
