@@ -7,7 +7,7 @@ import type { EventBody } from '@shared/walk/events';
 import { commitEvent } from './commitEvent';
 import { rowOf } from './database';
 import type { HeadRow, OutboxRow } from './rows';
-import { sealMeaning } from './sealMeaning';
+import { sealMeaning } from '@shared/walk/sealMeaning';
 import type { StorageError} from './storageError';
 import { storageErrorOf } from './storageError';
 import { isoOf } from './tabletClock';
