@@ -1,6 +1,7 @@
 import type { en } from './en';
+import type { officeWords } from './en/office';
 
-type English = typeof en;
+type English = typeof en & typeof officeWords;
 
 declare module 'vue-i18n' {
   // The English messages are the schema: t('…') completes their keys.
