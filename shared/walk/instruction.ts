@@ -161,9 +161,10 @@ export function remainingWindow(window: Window, standing: Quantity | null): Wind
 
 function modeOf(state: WalkState, slot: SlotRef): PullMode {
   if (state.retype && sameSlot(state.retype.slot, slot)) return 'retype';
-  if (state.resume && sameSlot(state.resume.slot, slot)) {
-    if (state.resume.way === 'ownTotal') return 'finishByTotal';
-    if (state.resume.way === 'stripe') return 'finishByStripe';
+  const resume = state.resumes.find((begun) => sameSlot(begun.slot, slot));
+  if (resume) {
+    if (resume.way === 'ownTotal') return 'finishByTotal';
+    if (resume.way === 'stripe') return 'finishByStripe';
   }
   return state.holes[slot.hole]?.slots[slotKey(slot)]?.status === 'partial' ? 'pullAgain' : 'fresh';
 }
@@ -330,7 +331,9 @@ export function resumeWays(state: WalkState, slot: SlotRef, stage: Stage): Resum
   const spent = isSpent(counts ? withUse(state, slot.hole) : state, slot.hole);
   const renewing: ResumeWay[] = jointOnly ? ['restartJoint'] : spent ? ['replace'] : ['restart', 'replace'];
   if (stage.kind !== 'turn') return ['asInstructed', ...renewing];
-  return ['ownTotal', ...(isStriped(state, slot.hole) ? (['stripe'] as const) : []), ...renewing];
+  // After a forced takeover nobody knows which pull the wrench's own total belongs to (W11).
+  const told: ResumeWay[] = state.mustLook.includes(slot.hole) ? [] : ['ownTotal'];
+  return [...told, ...(isStriped(state, slot.hole) ? (['stripe'] as const) : []), ...renewing];
 }
 
 function lookInstruction(state: WalkState, now: Now): Instruction {

@@ -155,8 +155,8 @@ export interface WalkState {
   toRepair: HoleId[];
   /** Do not pull: type again (R10). */
   retype: { slot: SlotRef; insteadOf: HoleId | null; voided: number; before: SlotOutcome | null } | null;
-  /** How an interrupted stage goes on (W9). */
-  resume: { slot: SlotRef; way: ResumeWay } | null;
+  /** How stages that were begun and interrupted go on: one at a hole, several after a forced takeover (W9, W11). */
+  resumes: { slot: SlotRef; way: ResumeWay }[];
   /** Holes to look at after a forced takeover (W11). */
   mustLook: HoleId[];
   begun: SlotRef | null;
@@ -207,7 +207,7 @@ const nothingYet: Omit<WalkState, 'procedure' | 'procedureHash' | 'holes'> = {
   reworks: [],
   toRepair: [],
   retype: null,
-  resume: null,
+  resumes: [],
   mustLook: [],
   begun: null,
   received: null,

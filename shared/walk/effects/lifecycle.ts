@@ -60,8 +60,9 @@ export function walkResumed(state: WalkState, event: EventContext, data: WalkRes
       : [],
   });
   if (turn && makesUsed(state, slot)) next = withUse(next, slot.hole);
-  if (rework) return withNewRework({ ...next, resume: null }, rework);
-  return data.way === 'asInstructed' ? next : { ...next, resume: { slot, way: data.way } };
+  const others = next.resumes.filter((begun) => begun.slot.hole !== slot.hole);
+  if (rework) return withNewRework({ ...next, resumes: others }, rework);
+  return data.way === 'asInstructed' ? next : { ...next, resumes: [...others, { slot, way: data.way }] };
 }
 
 /** `walk.signed`, `walk.countersigned`. */

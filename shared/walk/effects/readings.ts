@@ -106,7 +106,7 @@ function applyReading(state: WalkState, event: EventContext, data: ReadingTaken,
     begun: null,
   };
   // What was begun waits on while another hole was tightened, or an earlier figure is typed again (R5, R10, W9).
-  if (state.resume && sameSlot(state.resume.slot, placement.slot)) next = { ...next, resume: null };
+  next = { ...next, resumes: next.resumes.filter((begun) => !sameSlot(begun.slot, placement.slot)) };
   if (record.countsFor) next = withOutcome(next, record.countsFor, outcomeOf(event, data, placement, off !== null));
   if (makesUsed(state, placement.slot)) next = withUse(next, data.hole);
   next = touchPass(next, data.pass, event, slotOf(data));
@@ -191,5 +191,5 @@ export function stageDone(state: WalkState, event: EventContext, data: StageDone
   const outcome: SlotOutcome = { status: moved ? 'open' : 'done', seq: event.seq, total: null, verdict: null };
   let next = withOutcome(touchPass(withHands(state), data.pass, event, slot), slot, outcome);
   if (moved) next = withDeviation(next, event, { kind: 'witnessMoved', hole: slot.hole, slot });
-  return closePasses({ ...next, begun: null, resume: null }, event);
+  return closePasses({ ...next, begun: null }, event);
 }

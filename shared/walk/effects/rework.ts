@@ -23,7 +23,7 @@ const isRework = (choice: Choice): choice is 'restart' | 'replace' | 'restartJoi
 function isTightened(state: WalkState, hole: HoleId): boolean {
   const found = state.holes[hole];
   const pulled = state.readings.some(({ data, attempt }) => data.hole === hole && attempt === found?.attempt);
-  return pulled || Object.keys(found?.slots ?? {}).length > 0 || state.resume?.slot.hole === hole;
+  return pulled || Object.keys(found?.slots ?? {}).length > 0 || state.resumes.some(({ slot }) => slot.hole === hole);
 }
 
 /** The rework that a decision begins; null where it begins none. A hole that is empty already is only filled. */
@@ -195,8 +195,8 @@ function letGo(state: WalkState, hole: HoleId, catchUpTo: string | null): WalkSt
     catchUpTo,
   }));
   const retype = state.retype?.slot.hole === hole ? null : state.retype;
-  const resume = state.resume?.slot.hole === hole ? null : state.resume;
-  return { ...withoutSteps(cleared, hole), retype, resume };
+  const resumes = state.resumes.filter(({ slot }) => slot.hole !== hole);
+  return { ...withoutSteps(cleared, hole), retype, resumes };
 }
 
 /** Everything the joint had is gone: rounds, times, steps, and the gasket counts again (R6). */
