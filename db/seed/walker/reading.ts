@@ -35,7 +35,9 @@ function turnOf(pull: PullInstruction, random: Random): Quantity {
   };
   const value = { value: near(whole, 0, random), unit: 'deg' as const };
   if (pull.mode !== 'retype' || !pull.standing) return value;
-  return subtractQuantities(value, pull.standing);
+  // Typed again is what that one pull showed; where it went past the window nothing makes it fit.
+  const rest = subtractQuantities(value, pull.standing);
+  return Number(rest.value) > 0 ? rest : { value: '5', unit: 'deg' };
 }
 
 /** End torques spread round a truth: the middle of what the manual lets expect. */

@@ -3,6 +3,7 @@ import { targetOf } from '@shared/quantity/window';
 import type { Choice, Source } from '@shared/walk/events';
 import { needOf, workInstruction, type Instruction, type PullInstruction } from '@shared/walk/instruction';
 import type { Deviation } from '@shared/walk/deviation';
+import { fastenerOf } from '@shared/walk/slots';
 import type { Offers } from '@shared/walk/offers';
 import type { Random } from './random';
 import { readingFor } from './reading';
@@ -52,6 +53,15 @@ function opening({ setting }: WalkBook): Draft {
       earlier: setting.earlier ?? { readingsTaken: false, usedHoles: [] },
     },
   };
+}
+
+/** A part comes, for the hole that stands open for want of one (R7); null where it is not said which. */
+function partArrives(book: WalkBook, random: Random): Draft | null {
+  const { state, setting } = book;
+  const hole = state.deviations.filter(({ kind }) => kind === 'noPartLeft').at(-1)?.hole;
+  if (hole === undefined || hole === null) return null;
+  const type = fastenerOf(setting.procedure, hole);
+  return partsFor({ kind: 'parts', missing: [{ part: type.id, name: type.name, need: 1, have: 0 }] }, book, random);
 }
 
 /** Looked at the work: nothing was begun (W9). */
@@ -200,7 +210,8 @@ function signing({ who }: Of<'sign'>, book: WalkBook): Draft {
 function pulling(book: WalkBook, pull: PullInstruction, manner: Manner): Draft {
   const wrench = pull.wrench === null ? undefined : book.state.wrenches[pull.wrench];
   const entry = readingFor(pull, wrench, manner.source(pull), manner.random);
-  return readingDraft(book, entry, pull);
+  const insteadOf = pull.mode === 'retype' ? (book.state.retype?.insteadOf ?? null) : null;
+  return readingDraft(book, insteadOf === null ? entry : { ...entry, insteadOf }, pull);
 }
 
 /** A reading as a draft, with the time a pull of its kind takes. */
@@ -213,18 +224,9 @@ export function readingDraft(
   return { type: 'reading.taken', by: book.state.hands.records, after: seconds, data: entry };
 }
 
-/**
- * What an ideal technician does at the instruction on the screen, or null where the walk is out of his hands: finished,
- * with the shop, voided or stopped. A wait is sat out: the clock moves on and the next instruction is asked for.
- */
-export function nextDraft(book: WalkBook, instruction: Instruction, manner: Manner): Draft | null {
+/** What the work itself asks for (W4); null where the instruction is about the walk as a whole. */
+function workDraft(book: WalkBook, instruction: Instruction, manner: Manner): Draft | null {
   switch (instruction.kind) {
-    case 'open':
-      return opening(book);
-    case 'paused':
-      return resuming(book, 'paused');
-    case 'lookAtWork':
-      return resuming(book, 'killed');
     case 'settle':
       return settling(book, instruction, manner);
     case 'loosen':
@@ -242,20 +244,41 @@ export function nextDraft(book: WalkBook, instruction: Instruction, manner: Mann
       return pulling(book, instruction, manner);
     case 'perform':
       return performing(instruction, book);
+    default:
+      return null;
+  }
+}
+
+const countersigning = ({ setting }: WalkBook): Draft => ({
+  type: 'walk.countersigned',
+  by: setting.supervisor,
+  after: 300,
+  data: { meaning: 'checkedRecordAndJoint', seal: '' },
+});
+
+/**
+ * What an ideal technician does at the instruction on the screen, or null where the walk is out of his hands: finished,
+ * with the shop, voided or stopped. A wait is sat out: the clock moves on and the next instruction is asked for.
+ */
+export function nextDraft(book: WalkBook, instruction: Instruction, manner: Manner): Draft | null {
+  switch (instruction.kind) {
+    case 'open':
+      return opening(book);
+    case 'paused':
+      return (
+        (instruction.cause === 'noPartLeft' ? partArrives(book, manner.random) : null) ?? resuming(book, 'paused')
+      );
+    case 'lookAtWork':
+      return resuming(book, 'killed');
     case 'held':
       return instruction.deviations[0] ? accepting(book, instruction.deviations[0]) : null;
     case 'sign':
       return signing(instruction, book);
     case 'countersign':
-      return {
-        type: 'walk.countersigned',
-        by: book.setting.supervisor,
-        after: 300,
-        data: { meaning: 'checkedRecordAndJoint', seal: '' },
-      };
+      return countersigning(book);
     case 'release':
       return { type: 'walk.released', by: book.state.hands.records, after: 5, data: { to: 'shop' } };
     default:
-      return null;
+      return workDraft(book, instruction, manner);
   }
 }

@@ -61,49 +61,58 @@ export interface WalkBook {
   pass(ms: number): void;
   /** The tablet was killed and started again: another boot, running time from zero (W9). */
   reboot(boot: string): void;
-  commandOf(draft: Draft): WalkCommand;
   /** Decides and appends, or says why not and changes nothing. */
   attempt(draft: Draft): Result<WalkEvent, Refusal>;
   /** As `attempt`, for drafts that must go through: throws with the refusal's code. */
   issue(draft: Draft): WalkEvent;
 }
 
+/** The tablet's clock and running time, which move only when somebody lets time pass. */
+function clockOf(setting: WalkSetting): Pick<WalkBook, 'now' | 'pass' | 'reboot'> {
+  let ms = setting.startMs;
+  let mono = setting.startMono ?? 60_000;
+  let { boot } = setting;
+  return {
+    now: () => ({ at: new Date(ms).toISOString(), mono, boot }),
+    pass: (milliseconds) => {
+      ms += milliseconds;
+      mono += milliseconds;
+    },
+    reboot: (next) => {
+      boot = next;
+      mono = 0;
+    },
+  };
+}
+
 /** A new book before its first event. */
 export function openBook(setting: WalkSetting): WalkBook {
   let state = initialWalk(setting.procedure, setting.hash);
   const events: WalkEvent[] = [];
-  let ms = setting.startMs;
-  let mono = setting.startMono ?? 60_000;
-  let boot = setting.boot;
+  const clock = clockOf(setting);
 
-  const now = (): Now => ({ at: new Date(ms).toISOString(), mono, boot });
-  const pass = (milliseconds: number): void => {
-    ms += milliseconds;
-    mono += milliseconds;
+  const commandOf = ({ type, data, by, office }: Draft): WalkCommand => {
+    const tablet = office ? 'office' : setting.tablet;
+    const roles = setting.people[by] ?? [];
+    return { type, data, by, ...clock.now(), tablet, known: setting.known, roles } as WalkCommand;
   };
 
-  const commandOf = ({ type, data, by, office }: Draft): WalkCommand =>
-    ({
-      type,
-      data,
-      by,
-      ...now(),
-      tablet: office ? 'office' : setting.tablet,
-      known: setting.known,
-      roles: setting.people[by] ?? [],
-    }) as WalkCommand;
-
   const attempt = (draft: Draft): Result<WalkEvent, Refusal> => {
-    pass((draft.after ?? 1) * 1000);
+    clock.pass((draft.after ?? 1) * 1000);
     const command = commandOf(draft);
     const decided = decide(state, command);
     if (!decided.ok) return decided;
-    const { at, mono: since, by, tablet, known } = command;
-    const context = { seq: state.seq + 1, branch: 0, at, mono: since, boot, by, tablet, known };
-    const event: WalkEvent = { ...decided.value, ...context };
+    const { at, mono, boot, by, tablet, known } = command;
+    const event: WalkEvent = { ...decided.value, seq: state.seq + 1, branch: 0, at, mono, boot, by, tablet, known };
     state = evolve(state, event);
     events.push(event);
     return { ok: true, value: event };
+  };
+
+  const issue = (draft: Draft): WalkEvent => {
+    const issued = attempt(withSeal(draft, PLAIN_SEAL));
+    if (issued.ok) return issued.value;
+    throw new Error(`${draft.type} refused: ${issued.error.code} ${JSON.stringify(issued.error.params ?? {})}`);
   };
 
   return {
@@ -112,19 +121,9 @@ export function openBook(setting: WalkSetting): WalkBook {
       return state;
     },
     events,
-    now,
-    pass,
-    reboot: (next) => {
-      boot = next;
-      mono = 0;
-    },
-    commandOf,
+    ...clock,
     attempt,
-    issue: (draft) => {
-      const issued = attempt(withSeal(draft, PLAIN_SEAL));
-      if (issued.ok) return issued.value;
-      throw new Error(`${draft.type} refused: ${issued.error.code} ${JSON.stringify(issued.error.params ?? {})}`);
-    },
+    issue,
   };
 }
 

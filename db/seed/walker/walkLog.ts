@@ -2,6 +2,7 @@ import { sealEvent } from '@shared/record/chain';
 import type { RecordCrypto, Signer } from '@shared/record/crypto';
 import { OFFICE, ZERO_HASH, type SignedEvent } from '@shared/record/envelope';
 import type { WalkEvent } from '@shared/walk/events';
+import { sealMeaning } from '@shared/walk/sealMeaning';
 import { openBook, wantsSeal, withSeal, type Draft, type WalkBook, type WalkSetting } from './walkBook';
 import { walkDrafts, type WalkPlan } from './walkOn';
 
@@ -34,25 +35,6 @@ export interface WalkLog {
   issue(draft: Draft): Promise<WalkEvent>;
 }
 
-/** What a PIN's owner says with it, in the words of confirmations. */
-export function meaningOf(draft: Draft): string {
-  switch (draft.type) {
-    case 'walk.signed':
-    case 'walk.countersigned':
-      return draft.data.meaning;
-    case 'walk.sentBack':
-      return 'sendBack';
-    case 'deviation.settled':
-      return 'accept';
-    case 'wait.skipped':
-      return 'skipWait';
-    case 'wrench.taken':
-      return 'override';
-    default:
-      throw new Error(`${draft.type} carries no PIN`);
-  }
-}
-
 /** A new log before its first event. */
 export function openLog(setting: WalkSetting, hand: WalkHand): WalkLog {
   const book = openBook(setting);
@@ -66,7 +48,7 @@ export function openLog(setting: WalkSetting, hand: WalkHand): WalkLog {
       const prev = signed.at(-1)?.hash ?? ZERO_HASH;
       const seq = book.state.seq + 1;
       const seal = wantsSeal(draft)
-        ? await hand.seal({ walk, seq, prev, person: draft.by, meaning: meaningOf(draft) })
+        ? await hand.seal({ walk, seq, prev, person: draft.by, meaning: sealMeaning(draft) })
         : '';
       const event = book.issue(withSeal(draft, seal));
       const signer = event.tablet === OFFICE ? hand.office : hand.tablet;

@@ -81,19 +81,26 @@ function* slipDrafts(book: WalkBook, slip: Slip, pull: PullInstruction, manner: 
   }
 }
 
-/** A finished value that a wrench sends is kept at once, and taken next (R10). */
-function* received(book: WalkBook, draft: Draft): Generator<Draft, void> {
-  if (draft.type !== 'reading.taken') return yield draft;
+/** The draft of a value that a wrench sends, kept at once before it is taken (R10); null where none is sent. */
+function receivedDraft(draft: Draft): Draft | null {
+  if (draft.type !== 'reading.taken' || draft.data.retype) return null;
   const { source, wrench, value, endTorque } = draft.data;
   const sent = source === 'keyed' || source === 'streamed' || source === 'simulated';
-  if (!sent || wrench === null || draft.data.retype) return yield draft;
-  yield {
+  if (!sent || wrench === null) return null;
+  return {
     type: 'reading.received',
     by: draft.by,
     after: (draft.after ?? 1) - 1,
     data: { wrench, source, value, ...(endTorque ? { endTorque } : {}) },
   };
-  yield { ...draft, after: 1, data: { ...draft.data, received: book.state.seq } };
+}
+
+function* withReceived(book: WalkBook, draft: Draft): Generator<Draft, void> {
+  const sent = receivedDraft(draft);
+  if (sent) yield sent;
+  if (sent && draft.type === 'reading.taken')
+    yield { ...draft, after: 1, data: { ...draft.data, received: book.state.seq } };
+  else yield draft;
 }
 
 /**
@@ -118,12 +125,12 @@ export function* walkDrafts(book: WalkBook, plan: WalkPlan = {}): Generator<Draf
     const due = slips.findIndex(({ at }) => isAt(at)(instruction));
     const slip = due < 0 || instruction.kind !== 'pull' ? undefined : slips.splice(due, 1)[0];
     if (slip && instruction.kind === 'pull') {
-      for (const draft of slipDrafts(book, slip, instruction, manner)) yield* received(book, draft);
+      for (const draft of slipDrafts(book, slip, instruction, manner)) yield* withReceived(book, draft);
       continue;
     }
     const draft = nextDraft(book, instruction, manner);
     if (!draft) return;
-    yield* received(book, draft);
+    yield* withReceived(book, draft);
   }
   throw new Error(`the walk of ${book.setting.procedure.code} goes round in circles`);
 }
