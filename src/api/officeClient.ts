@@ -13,7 +13,7 @@ export interface OfficeClientDeps {
 
 /**
  * Why a call of the office gave nothing. `code` is the server's own, or `office.busy`, `office.notOurs` (a proxy or a
- * captive portal answered) or `office.unreachable`; it is translated as `errors.<code>`.
+ * captive portal answered) or `office.unreachable`; it is translated as `office.errors.<code>`.
  */
 export class OfficeFailure extends Error {
   readonly code: string;

@@ -8,7 +8,7 @@ import { commitEvent } from './commitEvent';
 import { rowOf } from './database';
 import type { HeadRow, OutboxRow } from './rows';
 import { sealMeaning } from '@shared/walk/sealMeaning';
-import type { StorageError} from './storageError';
+import type { StorageError } from './storageError';
 import { storageErrorOf } from './storageError';
 import { isoOf } from './tabletClock';
 import { withSeal, type AppendRequest, type LogRefusal, type WalkAct } from './walkAct';

@@ -26,23 +26,25 @@ export const wideWrench: WrenchSnapshot = {
   certificate: 'K-1',
 };
 
-/** The whole tablet as it runs in a browser, on a disk in memory, before a shop that a network may hide. */
-export interface RealTablet {
-  tablet: Tablet;
+/** The world of a tablet on a disk in memory, before a shop that a network may hide. */
+export interface RealWorld {
+  world: TabletWorld;
   disk: FailingIndexedDb;
   clock: ReturnType<typeof handClock>;
   network: { fateOf: (path: string) => Fate; online: boolean };
 }
 
-/** Starts it; with `before`, the same tablet after it was killed: same disk, another boot. */
-export async function realTablet(shop: FakeShop, before?: RealTablet): Promise<RealTablet> {
+/** The whole tablet as it runs in a browser. */
+export interface RealTablet extends RealWorld {
+  tablet: Tablet;
+}
+
+/** A world; with `before`, the same tablet's after it was killed: same disk, another boot. */
+export function realWorld(shop: FakeShop, before?: RealWorld): RealWorld {
   const disk = before?.disk ?? failingIndexedDb();
-  if (before) {
-    before.tablet.sync.stop();
-    disk.restart();
-  }
+  if (before) disk.restart();
   const clock = before ? { ...before.clock, boot: `${before.clock.boot}x` } : handClock();
-  const network: RealTablet['network'] = { fateOf: () => 'fine', online: before?.network.online ?? true };
+  const network: RealWorld['network'] = { fateOf: () => 'fine', online: before?.network.online ?? true };
   const fetch = unreliableNetwork(shop, (path) => {
     shop.answer = { ...shop.answer, now: new Date(clock.now()).toISOString() };
     return network.fateOf(path);
@@ -62,8 +64,15 @@ export async function realTablet(shop: FakeShop, before?: RealTablet): Promise<R
     listen: () => undefined,
     version: 'test',
   };
-  const tablet = new Tablet(world);
+  return { world, disk, clock, network };
+}
+
+/** Starts a tablet; with `before`, the same one after it was killed. */
+export async function realTablet(shop: FakeShop, before?: RealTablet): Promise<RealTablet> {
+  before?.tablet.sync.stop();
+  const real = realWorld(shop, before);
+  const tablet = new Tablet(real.world);
   await tablet.start();
   await tablet.sync.poke();
-  return { tablet, disk, clock, network };
+  return { ...real, tablet };
 }
