@@ -44,10 +44,11 @@ function settle(answer: PdfAnswer): void {
 }
 
 function startThread(): Worker {
-  // From the sources the thread needs the same loader as the program; from a bundle it is a file beside it.
+  // From the sources the thread needs a loader first; from a bundle it is a program beside this one.
   const isSource = import.meta.url.endsWith('.ts');
-  const file = new URL(`./proofPdf.worker.${isSource ? 'ts' : 'js'}`, import.meta.url);
-  const started = new Worker(file, { execArgv: isSource ? ['--import', 'tsx'] : [] });
+  const program = new URL(`./proofPdf.worker.${isSource ? 'ts' : 'js'}`, import.meta.url);
+  const file = isSource ? new URL('./sourceThread.mjs', import.meta.url) : program;
+  const started = new Worker(file, { execArgv: [], workerData: { program: program.href } });
   started.on('message', settle);
   started.on('error', (error: Error) => {
     if (thread === started) endThread(error);

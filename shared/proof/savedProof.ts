@@ -31,9 +31,9 @@ function jsonOf(text: string): Record<string, unknown> | null {
 
 /** Reads a saved file, the public answer of a shop's server, or a bare sealed proof; null where it is none of them. */
 export function readSavedProof(text: string): SavedProof | null {
-  if (openProof(text)) return { sealed: text.trim(), keys: [] };
   const value = jsonOf(text);
-  const sealed = value?.sealed ?? value?.jws;
+  if (!value) return openProof(text) ? { sealed: text.trim(), keys: [] } : null;
+  const sealed = value.sealed ?? value.jws;
   if (typeof sealed !== 'string' || !openProof(sealed)) return null;
-  return { sealed, keys: Array.isArray(value?.keys) ? value.keys.filter(isJwk) : [] };
+  return { sealed, keys: Array.isArray(value.keys) ? value.keys.filter(isJwk) : [] };
 }

@@ -9,7 +9,7 @@ import { signDetached } from '@shared/record/signature';
 import type { WalkEvent } from '@shared/walk/events';
 import { makeTestSigner, testCrypto, type TestSigner } from './testSigner';
 import { testIds, testSetting } from './walkBook';
-import { openLog, walkOn, type WalkLog, type WalkPlan } from './walker';
+import { demoProcedures, openLog, walkOn, type WalkLog, type WalkPlan } from './walker';
 import type { WalkSetting } from '../../db/seed/walker/walkBook';
 
 /** A finished walk with the keys that signed it, and the proof the shop made of it. */
@@ -119,6 +119,13 @@ export async function makeProofKit(procedure: ProcedureDocument, wishes: KitWish
   const { document, disclosures } = built.value;
   const sealed = await sealProof(document, disclosures, shop.signer);
   return { log, shop, tablet, facts, document, sealed, shopKeys: [shop.publicJwk] };
+}
+
+/** A procedure of the demo by its code. */
+export function procedureOf(code: string): ProcedureDocument {
+  const found = demoProcedures.find((one) => one.code === code);
+  if (!found) throw new Error(`the demo has no procedure ${code}`);
+  return found;
 }
 
 /** The head of the sketch: bolt 5 over by nine degrees in its first turn, replaced, and one reading typed wrong. */
