@@ -11,10 +11,10 @@ import { dropDatabase } from '../db/clusterSql.mjs';
 import { ensurePages } from './start/build.mjs';
 import { endLeftoverServer, runTypeScript, spawnTypeScript, stopChild, untilAnswering } from './start/children.mjs';
 import { environmentOf, isEmptyDatabase, migrateDatabase, seedDatabase } from './start/database.mjs';
+import { databaseName } from './start/installation.mjs';
 import { ensureDebianPackages, ensureNode, ensurePackages, startNeeds } from './start/packages.mjs';
 import { holderOf, localPlace, rememberedPort } from './start/place.mjs';
 
-const databaseName = 'boltwalk';
 const place = localPlace('start');
 const lock = path.join(place, 'running.pid');
 
