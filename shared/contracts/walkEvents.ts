@@ -162,7 +162,7 @@ const readings = {
     verdict,
     endVerdict: verdict.optional(),
   }),
-  'reading.voided': z.strictObject({ reading: seq, reason: said() }),
+  'reading.voided': z.strictObject({ reading: seq, reason: said(), seal: digest.optional(), renews }),
   'reading.elsewhere': z.strictObject({ ...reading, branch: z.number().int().min(0).max(1_000), seq }),
 };
 

@@ -265,9 +265,7 @@ export function nextDraft(book: WalkBook, instruction: Instruction, manner: Mann
     case 'open':
       return opening(book);
     case 'paused':
-      return (
-        (instruction.cause === 'noPartLeft' ? partArrives(book, manner.random) : null) ?? resuming(book, 'paused')
-      );
+      return (instruction.cause === 'noPartLeft' ? partArrives(book, manner.random) : null) ?? resuming(book, 'paused');
     case 'lookAtWork':
       return resuming(book, 'killed');
     case 'held':
