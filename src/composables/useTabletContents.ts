@@ -16,6 +16,8 @@ export interface UseTabletContentsReturn {
   failure: Readonly<ShallowRef<string | null>>;
   /** Walks of which this tablet lost events that the server has (fault 20). */
   lost: () => readonly string[];
+  /** They were read: they are no longer told. */
+  forgetLost: () => Promise<void>;
   /** Everything on this tablet as one JSON file, also when part of it cannot be read. */
   exportFile: () => Promise<File>;
 }
@@ -43,6 +45,7 @@ export function useTabletContents(): UseTabletContentsReturn {
     room: readonly(room),
     failure: readonly(failure),
     lost: () => tablet.sync.lostWalks(),
+    forgetLost: () => tablet.forgetLost(),
     exportFile: async () => {
       const everything = await tablet.exportAll();
       const name = `boltwalk-tablet-${everything.exportedAt.slice(0, 10)}.json`;

@@ -50,6 +50,12 @@ export class SyncEngine {
     return this.#memory.lost;
   }
 
+  /** They were read: they are no longer told. */
+  async forgetLost(): Promise<void> {
+    await this.#deps.settings.remove('lostWalks');
+    this.#memory.lost = [];
+  }
+
   subscribe(listener: (status: SyncStatus) => void): () => void {
     this.#listeners.add(listener);
     return () => this.#listeners.delete(listener);
@@ -141,15 +147,22 @@ export class SyncEngine {
     this.#timer = this.#deps.setTimer(() => void this.poke(), Math.min(until + 1, SLEEP_MS));
   }
 
+  /** What must outlive the program is asked of the settings once. */
+  async #recall(): Promise<void> {
+    const { settings } = this.#deps;
+    this.#memory.lost = (await settings.get('lostWalks')) ?? [];
+    this.#memory.epochKnown = (await settings.get('catalogue')) !== undefined;
+  }
+
   async #state(): Promise<SyncState> {
-    const { database, settings, isOnline, tablet } = this.#deps;
-    this.#memory.epochKnown ??= (await settings.get('catalogue')) !== undefined;
+    const { database, isOnline, tablet } = this.#deps;
+    if (this.#memory.epochKnown === null) await this.#recall();
     const { bearer, revoked, retryAt, mostEvents, chains, catalogueDueAt, reportDueAt } = this.#memory;
     return {
       enrolled: tablet() !== null,
       revoked,
       online: isOnline(),
-      epochKnown: this.#memory.epochKnown,
+      epochKnown: this.#memory.epochKnown === true,
       bearerEndsAt: bearer?.endsAt ?? null,
       retryAt,
       walks: await readBacklog(database),

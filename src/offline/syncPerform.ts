@@ -117,15 +117,18 @@ async function sendBlob(context: SyncContext, token: string, { sha256 }: Step<'s
   else if (refusal) await markBlobRefused(context.database, sha256, refusal.code);
 }
 
-async function lookAhead({ database, memory, tablet }: SyncContext, catalogue: Catalogue): Promise<void> {
+async function lookAhead({ database, settings, memory, tablet }: SyncContext, catalogue: Catalogue): Promise<void> {
   const { heads, standings } = await database.read(['heads', 'standings'], async (transaction) => ({
     heads: await rowsOf<HeadRow>(transaction, 'heads'),
     standings: await rowsOf<StandingRow>(transaction, 'standings'),
   }));
   const ahead = aheadAtServer(Object.values(catalogue.walks), heads, standings, tablet);
   memory.chains = ahead.grown;
-  if (ahead.lost.some((walk) => !memory.lost.includes(walk))) memory.reportDueAt = 0;
-  memory.lost = [...new Set([...memory.lost, ...ahead.lost])];
+  const news = ahead.lost.filter((walk) => !memory.lost.includes(walk));
+  if (news.length === 0) return;
+  // Written down before the lost end is fetched: that something was lost stays known when it has come back (fault 20).
+  memory.lost = await settings.update('lostWalks', (old = []) => [...new Set([...old, ...news])]);
+  memory.reportDueAt = 0;
 }
 
 async function takeCatalogue(context: SyncContext, answer: CatalogueAnswer): Promise<void> {

@@ -18,12 +18,14 @@ import { walksOnTablet, type WalkOnTablet } from './walkIndex';
 import { WalkShelf } from './walkShelf';
 
 const OFFLINE_DAYS = 14;
+const POKE_AFTER_MS = 250;
 
 /** This tablet: who it is, what it knows, the walks on it, and what it sends. One for the whole program. */
 export class Tablet {
   readonly walks: WalkShelf;
   readonly sync: SyncEngine;
   readonly #core: TabletCore;
+  #pokeTimer: unknown = null;
 
   constructor(world: TabletWorld) {
     this.#core = tabletCore(world);
@@ -32,7 +34,7 @@ export class Tablet {
       onWalk: (walk) => void this.walks.reload(walk).catch((error: unknown) => this.#storageFailed(error)),
       lostWalks: () => this.sync.lostWalks(),
     });
-    this.walks = new WalkShelf(this.#core, () => void this.sync.poke());
+    this.walks = new WalkShelf(this.#core, () => this.#pokeSoon());
     world.listen((word) => void this.#heard(word).catch((error: unknown) => this.#storageFailed(error)));
   }
 
@@ -73,8 +75,19 @@ export class Tablet {
 
   stop(): void {
     this.sync.stop();
+    if (this.#pokeTimer !== null) this.#core.world.clearTimer(this.#pokeTimer);
+    this.#pokeTimer = null;
     this.#core.database.close();
     this.#core.settings.close();
+  }
+
+  /** After an event: the next instruction is painted first, and quick taps make one round of sending. */
+  #pokeSoon(): void {
+    if (this.#pokeTimer !== null) return;
+    this.#pokeTimer = this.#core.world.setTimer(() => {
+      this.#pokeTimer = null;
+      void this.sync.poke();
+    }, POKE_AFTER_MS);
   }
 
   #storageFailed(error: unknown): void {
@@ -199,6 +212,11 @@ export class Tablet {
     if (!done.ok) return done;
     await this.walks.reload(done.value.walk);
     return ok(done.value.walk);
+  }
+
+  /** Somebody has read which walks lost events here (fault 20). */
+  forgetLost(): Promise<void> {
+    return this.sync.forgetLost();
   }
 
   walksHere(): Promise<WalkOnTablet[]> {

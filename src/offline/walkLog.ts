@@ -40,7 +40,8 @@ export interface WalkStart {
 /** What is known of a walk at one moment. */
 export interface WalkSnapshot<S, V> {
   state: S;
-  view: V;
+  /** Worked out when it is first looked at. */
+  readonly view: V;
   /** Hash of the last event; 64 zeros before the first. Commands carry it (decision 11). */
   head: string;
   next: number;

@@ -54,9 +54,15 @@ export class WalkWriter<S, V> {
 
   snapshot(): WalkSnapshot<S, V> {
     const { state, head, broken } = this.#standing;
+    const see = (): V => this.#deps.rules.view(state, this.#moment());
+    let view: { of: V } | null = null;
     return {
       state,
-      view: this.#deps.rules.view(state, this.#moment()),
+      // Seen only when somebody looks: a view costs more than the event it shows.
+      get view() {
+        view ??= { of: see() };
+        return view.of;
+      },
       head: head?.hash ?? ZERO_HASH,
       next: head?.next ?? 0,
       readOnly: this.#readOnly,

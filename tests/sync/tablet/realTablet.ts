@@ -57,9 +57,9 @@ export function realWorld(shop: FakeShop, before?: RealWorld): RealWorld {
     storage: undefined,
     random: () => 0.5,
     isOnline: () => network.online,
-    // Nothing happens by itself: a test pokes.
-    setTimer: () => null,
-    clearTimer: () => undefined,
+    // Only what follows an event at once happens by itself; for the rest a test pokes.
+    setTimer: (work, ms) => (ms < 1000 ? setTimeout(work, ms) : null),
+    clearTimer: (timer) => clearTimeout(timer as NodeJS.Timeout | undefined),
     tell: () => undefined,
     listen: () => undefined,
     version: 'test',

@@ -229,6 +229,38 @@ describe('a tablet with the real rules', () => {
     );
   });
 
+  it('remembers that it lost events, gets them back, and tells the office (fault 20)', async () => {
+    const shop = await FakeShop.open(head, [wideWrench]);
+    const real = await signedInAtTheStand(shop);
+    const walk = await begun(real);
+    const log = await real.tablet.walks.open(walk);
+    await walkOn(real, log, { until: (_, book) => book.state.readings.length >= 3 });
+    const { head: last } = log.snapshot();
+    real.network.online = true;
+    await real.tablet.sync.poke();
+    shop.answer = { ...shop.answer, cursor: 6, full: false, walks: [shop.rowOf(walk)] };
+    // Somebody clears the browser's storage by hand; the settings stay, as when a disk lost its end.
+    const cleared = await realTablet(shop, { ...real, disk: real.disk });
+    await new Promise<void>((resolve, reject) => {
+      const request = real.disk.factory.open('boltwalk-walks');
+      request.onerror = () => reject(new Error('not opened'));
+      request.onsuccess = () => {
+        const transaction = request.result.transaction(['events', 'heads', 'standings'], 'readwrite');
+        for (const store of ['events', 'heads', 'standings']) transaction.objectStore(store).clear();
+        transaction.addEventListener('complete', () => resolve());
+      };
+    });
+    await cleared.tablet.sync.press();
+    expect(cleared.tablet.sync.lostWalks()).toEqual([walk]);
+    expect(shop.reports.at(-1)).toMatchObject({ lost: [walk] });
+    expect(await cleared.tablet.fetchWalk(walk)).toEqual({ ok: true, value: walk });
+    expect((await cleared.tablet.walks.open(walk)).snapshot().head).toBe(last);
+    const again = await realTablet(shop, cleared);
+    expect(again.tablet.sync.lostWalks()).toEqual([walk]);
+    await again.tablet.forgetLost();
+    expect(again.tablet.sync.lostWalks()).toEqual([]);
+  });
+
   it('signs somebody out when the shop says that they left, and keeps the walk (fault 16)', async () => {
     const shop = await FakeShop.open(head, [wideWrench]);
     const real = await signedInAtTheStand(shop);
