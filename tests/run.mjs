@@ -74,7 +74,10 @@ const runStage = async (stage, context) => {
     skipped: 0,
     output: error.stack ?? error.message,
   }));
-  if (stage === bench) return result;
+  if (stage === bench) {
+    if (result.output) process.stderr.write(`${result.output}\n`);
+    return result;
+  }
   if (result.failed > 0) process.stdout.write(`\n--- ${stage.name} ---\n${result.output.trim()}\n\n`);
   const seconds = ((performance.now() - begun) / 1000).toFixed(1).padStart(7);
   const skipped = result.skipped ? `, ${result.skipped} skipped` : '';
