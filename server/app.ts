@@ -56,10 +56,7 @@ export const createApp = (deps: Deps): Express => {
     next();
   });
   app.use('/api', requestLog(deps));
-  app.use(
-    '/api',
-    floodGuard(REQUESTS_A_MINUTE, () => deps.clock.now().getTime()),
-  );
+  app.use('/api', floodGuard(REQUESTS_A_MINUTE));
   app.use(apiRoutes(deps));
   app.use('/api', unknownRoute);
   app.use(pages(deps.config.distDir));

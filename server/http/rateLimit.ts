@@ -1,4 +1,5 @@
 import type { RequestHandler } from 'express';
+import { rateLimit } from 'express-rate-limit';
 import { growingWait } from './growingWait';
 import { waitFirst } from './errors';
 
@@ -39,23 +40,16 @@ export class FailureMemory {
 }
 
 /**
- * A flood guard for addresses anybody may call: so many requests a minute from one address, then 429 with
- * `details.seconds`. High enough for a shop of tablets behind one router that come back in the same second.
+ * A flood guard: so many requests a minute from one address, then 429 with `details.seconds`. High enough for a shop of
+ * tablets behind one router that come back in the same second.
  */
-export const floodGuard = (mostAMinute: number, now: () => number): RequestHandler => {
-  let minute = 0;
-  let counts = new Map<string, number>();
-  return (request, _response, next) => {
-    const current = Math.floor(now() / 60_000);
-    if (current !== minute) {
-      minute = current;
-      counts = new Map();
-    }
-    const count = (counts.get(request.ip ?? '') ?? 0) + 1;
-    counts.set(request.ip ?? '', count);
-    if (count > mostAMinute) {
-      throw waitFirst('rate.tooMany', 'Too many requests from this address.', 60 - (Math.floor(now() / 1000) % 60));
-    }
-    next();
-  };
-};
+export const floodGuard = (mostAMinute: number): RequestHandler =>
+  rateLimit({
+    windowMs: 60_000,
+    limit: mostAMinute,
+    standardHeaders: false,
+    legacyHeaders: false,
+    handler: (_request, _response, next) => {
+      next(waitFirst('rate.tooMany', 'Too many requests from this address.', 60));
+    },
+  });

@@ -27,10 +27,11 @@ interface ParserError {
 }
 
 /** What a body parser complains about, as an answer: always the sender's fault, never a 500. */
-const bodyError = (error: unknown, limit: number): AppError => {
+const bodyError = (error: unknown, endpoint: EndpointDefinition): AppError => {
   const { type, status } = error as ParserError;
   if (type === 'entity.too.large') {
-    return new AppError(413, 'body.tooLarge', `The body is larger than ${limit} bytes.`, { limit });
+    const { limit = DEFAULT_LIMIT, tooLarge = 'body.tooLarge' } = endpoint;
+    return new AppError(413, tooLarge, `The body is larger than ${limit} bytes.`, { limit });
   }
   if (type === 'entity.parse.failed') return badRequest('body.notJson', 'The body is no JSON.');
   if (type === 'encoding.unsupported' || type === 'charset.unsupported') {
@@ -58,6 +59,6 @@ export const readBody = async (
   const failure = await new Promise<unknown>((resolve) => {
     void parserOf(endpoint)(request, response, resolve);
   });
-  if (failure) throw bodyError(failure, endpoint.limit ?? DEFAULT_LIMIT);
+  if (failure) throw bodyError(failure, endpoint);
   return request.body as unknown;
 };

@@ -14,6 +14,7 @@ export const validate = (schema: z.ZodType, value: unknown, part: 'params' | 'qu
   const issues = parsed.error.issues.slice(0, 10).map((issue) => ({
     field: issue.path.join('.'),
     message: issue.message,
+    ...(issue.code === 'custom' && issue.params ? { params: issue.params } : {}),
   }));
   const own = issues.find((issue) => OWN_CODE.test(issue.message));
   const first = own ?? issues[0];
@@ -22,5 +23,6 @@ export const validate = (schema: z.ZodType, value: unknown, part: 'params' | 'qu
     part,
     field,
     issues,
+    ...(own && 'params' in own ? own.params : {}),
   });
 };

@@ -16,6 +16,7 @@ export const putBlob = defineEndpoint({
   params: z.object({ sha256 }),
   body: { kind: 'binary', contentType: 'application/octet-stream' },
   limit: MOST_BLOB_BYTES,
+  tooLarge: 'blob.tooLarge',
   responses: { 200: z.object({ sha256, bytes: z.number().int() }) },
 });
 

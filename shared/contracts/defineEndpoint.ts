@@ -17,6 +17,8 @@ export interface EndpointDefinition {
   body?: z.ZodType | BinaryBody;
   /** Largest body in bytes; absent = 256 KiB. */
   limit?: number;
+  /** Code of the 413 for a larger one; absent = `body.tooLarge`. */
+  tooLarge?: string;
   /** Answers by status; errors share `errorAnswer` and are not listed. */
   responses: Partial<Record<200 | 201, z.ZodType | BinaryBody>>;
 }

@@ -2,7 +2,7 @@ import { z } from 'zod';
 import { moment } from './common.contract';
 import { defineEndpoint } from './defineEndpoint';
 
-/** Whether the server and its database answer; 503 `health.database` when the database does not. */
+/** Whether the server and its database answer; 503 `server.database` when the database does not. */
 export const health = defineEndpoint({
   method: 'GET',
   path: '/api/health',

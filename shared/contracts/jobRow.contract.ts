@@ -1,20 +1,26 @@
 import { z } from 'zod';
+import { checkVin, normalizeVin, vinBlocks } from '../vehicle/vin';
 import { id, moment, optionalText, purpose, text } from './common.contract';
 
 /** Figures of the vehicle or machine at the time of the job; decimal strings. */
 const decimal = z.string().regex(/^\d{1,9}(\.\d{1,3})?$/);
 
 /**
- * A VIN as typed, upper-cased; 17 letters and digits without I, O, Q (refused as `vin.letters` with
- * `details.positions`), or empty. The check digit only warns (D3): it is not looked at here.
+ * A VIN as typed, or empty. Kept in capitals without blanks and hyphens. Refused as `vin.length`, `vin.letterIOQ` (with
+ * `at`, `character` and the digit that is `meant`) or `vin.character`; the check digit only warns (D3) and is not
+ * looked at here.
  */
 export const vin = z
   .string()
-  .trim()
-  .toUpperCase()
-  .refine((value) => value === '' || value.length === 17, { error: 'vin.length' })
-  .refine((value) => !/[IOQ]/.test(value), { error: 'vin.letters' })
-  .refine((value) => /^[A-Z0-9]*$/.test(value), { error: 'vin.characters' });
+  .max(60)
+  .transform(normalizeVin)
+  .superRefine((value, context) => {
+    if (value === '') return;
+    const problem = checkVin(value).problems.find(vinBlocks);
+    if (!problem) return;
+    const { code, ...params } = problem;
+    context.addIssue({ code: 'custom', message: `vin.${code}`, params });
+  });
 
 /** What is written down when a job is opened; every text field but the number may be left empty. */
 export const jobFields = z.object({

@@ -70,6 +70,7 @@ export const syncEvents = defineEndpoint({
     seals: z.array(seal).max(MOST_EVENTS).default([]),
   }),
   limit: MOST_BATCH_BYTES,
+  tooLarge: 'batch.tooLarge',
   responses: { 200: receipt },
 });
 

@@ -121,7 +121,7 @@ describe('a batch', () => {
     const [event] = walk.log.signed;
     const large = { ...walk.batch(0, 1), padding: 'x'.repeat(5_000_000) };
     const reply = await tablet.send('POST', `/api/tablet/walks/${walk.id}/events`, large);
-    expect([reply.status, reply.body.error?.code]).toEqual([413, 'body.tooLarge']);
+    expect([reply.status, reply.body.error?.code]).toEqual([413, 'batch.tooLarge']);
     const many = { branch: 0, events: Array.from({ length: 501 }, () => event), seals: [] };
     const tooMany = await tablet.send('POST', `/api/tablet/walks/${walk.id}/events`, many);
     expect([tooMany.status, tooMany.body.error?.code]).toEqual([400, 'request.invalid']);

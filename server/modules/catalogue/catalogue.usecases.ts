@@ -39,19 +39,23 @@ const procedureRows = async (tx: ShopTx, since: number): Promise<CatalogueProced
         ],
   );
 
-const walkRows = async (tx: ShopTx, since: number) => {
-  const rows = await walksForTablets(tx, since);
+/** Days for which a finished walk stays on tablets (decision 8). */
+const WALK_DAYS = 60;
+
+const walkRows = async (deps: Deps, tx: ShopTx, since: number) => {
+  const changedAfter = new Date(deps.clock.now().getTime() - WALK_DAYS * 24 * 3_600_000);
+  const rows = await walksForTablets(tx, since, changedAfter);
   const siblings = await walksOfJoints(tx, [...new Set(rows.map(({ jointId }) => jointId))]);
   return rows.map((row) => toWalkRow(row, siblings.get(row.jointId)));
 };
 
-const rowsSince = async (tx: ShopTx, since: number) => ({
+const rowsSince = async (deps: Deps, tx: ShopTx, since: number) => ({
   people: (await peopleSince(tx, since)).map(toCataloguePerson),
   wrenches: (await wrenchesSince(tx, since)).map(toCatalogueWrench),
   procedures: await procedureRows(tx, since),
   jobs: (await jobsSince(tx, since)).map(toJobRow),
   joints: (await jointsSince(tx, since)).map((row) => ({ ...toJointRow(row), earlier: row.earlier })),
-  walks: await walkRows(tx, since),
+  walks: await walkRows(deps, tx, since),
   orders: (await ordersSince(tx, since)).map(toOrder),
   confirmations: (await confirmationsSince(tx, since)).map(toConfirmation),
 });
@@ -76,6 +80,6 @@ export const readCatalogue = async (
     full,
     now: deps.clock.now().toISOString(),
     settings: shop.changed > since ? await shopFor(deps, tx, shop) : null,
-    ...(await rowsSince(tx, since)),
+    ...(await rowsSince(deps, tx, since)),
   };
 };

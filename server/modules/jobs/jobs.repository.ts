@@ -1,5 +1,6 @@
 import { and, asc, desc, eq, gt, inArray, sql } from 'drizzle-orm';
 import type { JobFields, JointFields } from '@shared/contracts/jobRow.contract';
+import { vinSearchKey } from '@shared/vehicle/vin';
 import { jobJoints, jobs } from '@db/schema/jobs';
 import { procedures } from '@db/schema/procedures';
 import { walks } from '@db/schema/walks';
@@ -20,8 +21,13 @@ export const searchShop = async (
   phrase: string,
   most: number,
 ): Promise<string[]> => {
-  const result = await tx.db.execute<{ id: string }>(sql`select id from search_shop(${kind}, ${phrase}, ${most})`);
-  return result.rows.map(({ id }) => id);
+  const found = new Set<string>();
+  // A VIN misread from the plate (O for 0, I for 1) still finds its engine.
+  for (const spelling of new Set([phrase, vinSearchKey(phrase)])) {
+    const result = await tx.db.execute<{ id: string }>(sql`select id from search_shop(${kind}, ${spelling}, ${most})`);
+    for (const { id } of result.rows) found.add(id);
+  }
+  return [...found];
 };
 
 /** Jobs by state, newest first; with ids given only those. */

@@ -1,10 +1,16 @@
-import { and, eq, isNull, lte, sql } from 'drizzle-orm';
+import { and, eq, gt, isNull, lte, sql } from 'drizzle-orm';
 import { outbox } from '@db/schema/outbox';
 import type { Deps } from '../../deps';
 import type { DatabaseClient } from '../../tenancy/client';
 import type { ShopTx } from '../../tenancy/withShop';
 
-/** Leaves work to be done after the commit, in the transaction of its cause (decision 15). */
+/** Work waits a little, so that what comes in many small pieces is done once. */
+const GATHER_MS = 10_000;
+
+/**
+ * Leaves work to be done after the commit, in the transaction of its cause (decision 15). The same work that is not due
+ * yet covers this cause as well; work that is due may be under way, and covers it no more.
+ */
 export const leaveWork = async (
   deps: Pick<Deps, 'ids' | 'clock'>,
   tx: ShopTx,
@@ -12,9 +18,22 @@ export const leaveWork = async (
   payload: Record<string, unknown>,
 ): Promise<void> => {
   const now = deps.clock.now();
-  await tx.db
-    .insert(outbox)
-    .values({ shopId: tx.shop, id: deps.ids.uuid(), kind, payload, createdAt: now, nextAt: now });
+  const waiting = await tx.db
+    .select({ id: outbox.id })
+    .from(outbox)
+    .where(
+      and(
+        eq(outbox.shopId, tx.shop),
+        eq(outbox.kind, kind),
+        isNull(outbox.doneAt),
+        gt(outbox.nextAt, now),
+        sql`${outbox.payload} = ${JSON.stringify(payload)}::jsonb`,
+      ),
+    )
+    .limit(1);
+  if (waiting.length > 0) return;
+  const nextAt = new Date(now.getTime() + GATHER_MS);
+  await tx.db.insert(outbox).values({ shopId: tx.shop, id: deps.ids.uuid(), kind, payload, createdAt: now, nextAt });
 };
 
 /** A piece of work as it is taken up. */

@@ -28,15 +28,15 @@ export const updateWalk = async (tx: ShopTx, id: string, change: WalkChange): Pr
   await tx.db.update(walks).set(change).where(mine(tx, id));
 };
 
-/** Walks that are not at their end, and those whose line changed after a cursor. */
-export const walksForTablets = (tx: ShopTx, since: number): Promise<WalkRecord[]> =>
+/** Walks whose line changed after a cursor; from 0, those not at their end and those changed since a moment. */
+export const walksForTablets = (tx: ShopTx, since: number, changedAfter: Date): Promise<WalkRecord[]> =>
   tx.db
     .select()
     .from(walks)
     .where(
       and(
         eq(walks.shopId, tx.shop),
-        since === 0 ? or(ne(walks.state, 'finished'), gt(walks.changedAt, sql`now() - interval '60 days'`)) : undefined,
+        since === 0 ? or(ne(walks.state, 'finished'), gt(walks.changedAt, changedAfter)) : undefined,
         gt(walks.changed, since),
       ),
     )
@@ -169,4 +169,14 @@ export const insertSettling = async (
     .insert(quarantineSettlings)
     .values({ shopId: tx.shop, ...settling })
     .onConflictDoNothing();
+};
+
+/** The ids of every walk of the shop. */
+export const walkIds = async (tx: ShopTx): Promise<string[]> => {
+  const rows = await tx.db
+    .select({ id: walks.id })
+    .from(walks)
+    .where(eq(walks.shopId, tx.shop))
+    .orderBy(asc(walks.openedAt));
+  return rows.map(({ id }) => id);
 };

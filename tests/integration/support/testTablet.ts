@@ -74,14 +74,6 @@ export interface TabletWalk {
   send(from?: number, to?: number): Promise<Reply>;
 }
 
-/** The name under which a PIN is sealed for an event. */
-export const sealedMeaning: Record<string, string> = {
-  sendBack: 'walk.sentBack',
-  accept: 'deviation.settled',
-  skipWait: 'wait.skipped',
-  override: 'wrench.taken',
-};
-
 const settingFor = (tablet: TestTablet, more: Partial<WalkSetting>): WalkSetting => {
   const { shop } = tablet;
   const { technician, colleague, supervisor } = shop.people;
@@ -120,8 +112,7 @@ export const tabletWalk = (
   const seals = new Map<string, string>();
   const seal = async ({ walk, seq, prev, person, meaning }: SealFor): Promise<string> => {
     const pin = wrongPin ?? pinOf(tablet.shop, person)?.pin ?? '';
-    const meant = sealedMeaning[meaning] ?? meaning;
-    const jwe = await tablet.seal({ pin, person, walk, seq, prev, meaning: meant, pinVersion: 1 });
+    const jwe = await tablet.seal({ pin, person, walk, seq, prev, meaning, pinVersion: 1 });
     const hash = sha256Hex(jwe);
     seals.set(hash, jwe);
     return hash;
