@@ -70,7 +70,10 @@ function attach(paper: Paper, { attached, document }: PdfJob): void {
   });
 }
 
-/** Draws the pages of a proof. Blocks the thread for a moment: ask {@link renderProofPdf}, which does it in a worker. */
+/** Name of the file that is attached. */
+export const pdfName = ({ number }: ProofDocument): string => `${number.replace(/[^\w-]+/g, '-')}.json`;
+
+/** Draws the pages of a proof. Blocks the thread for a moment: ask `renderProofPdf`, which does it in a thread of its own. */
 export function drawProofPdf(job: PdfJob): Promise<Uint8Array> {
   const { document, side, lang } = job;
   const paper = paperFor(job);

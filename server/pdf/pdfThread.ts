@@ -1,9 +1,8 @@
 import { Worker } from 'node:worker_threads';
-import type { PdfJob } from './drawProofPdf';
-import type { PdfAnswer, PdfRequest } from './proofPdf.worker';
+import type { PdfAnswer, PdfRequest, PdfTask } from './proofPdf.worker';
 
 interface Waiting {
-  resolve: (bytes: Uint8Array) => void;
+  resolve: (bytes: Uint8Array | null) => void;
   reject: (error: Error) => void;
   timer: NodeJS.Timeout;
 }
@@ -60,7 +59,7 @@ function startThread(): Worker {
 }
 
 /** Draws in a thread of its own, so that nobody else's request waits for a page. */
-export function drawInThread(job: PdfJob): Promise<Uint8Array> {
+export function inThread(task: PdfTask): Promise<Uint8Array | null> {
   clearTimeout(idle);
   thread ??= startThread();
   thread.ref();
@@ -69,6 +68,6 @@ export function drawInThread(job: PdfJob): Promise<Uint8Array> {
   return new Promise((resolve, reject) => {
     const timer = setTimeout(() => endThread(new Error('Drawing the page took too long.')), LONGEST_MS).unref();
     waiting.set(id, { resolve, reject, timer });
-    current.postMessage({ id, job } satisfies PdfRequest);
+    current.postMessage({ id, task } satisfies PdfRequest);
   });
 }

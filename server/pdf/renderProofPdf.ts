@@ -2,9 +2,10 @@ import type { ProofDocument } from '@shared/proof/proofDocument';
 import type { SideSheet } from '@shared/proof/sideSheet';
 import type { Locale } from '@shared/quantity/format';
 import { canonicalJson } from '@shared/record/canonicalJson';
-import type { ProofStamp } from './drawProofPdf';
+import { pdfName, type ProofStamp } from './drawProofPdf';
 import type { PaperSize } from './paper';
-import { drawInThread } from './pdfThread';
+import { inThread } from './pdfThread';
+import type { PrintJob } from './printProof';
 
 /** How a proof is wanted on paper. */
 export interface PdfWish {
@@ -24,8 +25,11 @@ export interface PdfWish {
  */
 export async function renderProofPdf(document: ProofDocument, wish: PdfWish): Promise<Buffer> {
   const { size, lang, side = { names: {} }, stamps = [] } = wish;
-  const text = wish.saved ?? canonicalJson(document);
-  const name = `${document.number.replace(/[^\w-]+/g, '-')}.json`;
-  const bytes = await drawInThread({ document, side, size, lang, stamps, attached: { name, text } });
-  return Buffer.from(bytes.buffer, bytes.byteOffset, bytes.byteLength);
+  const attached = { name: pdfName(document), text: wish.saved ?? canonicalJson(document) };
+  const bytes = await inThread({ kind: 'draw', job: { document, side, size, lang, stamps, attached } });
+  if (!bytes) throw new Error('a page that was only to be drawn came back empty');
+  return Buffer.from(bytes);
 }
+
+/** Checks a sealed proof and prints it, in the same thread; null where it cannot even be read. */
+export const printSealedProof = (job: PrintJob): Promise<Uint8Array | null> => inThread({ kind: 'print', job });

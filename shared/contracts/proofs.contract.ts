@@ -108,6 +108,8 @@ export const publicProofAnswer = z.object({
   supersededBy: z.object({ number: z.string(), issue: z.number().int(), publicUrl: z.string() }).nullable(),
   jws: z.string(),
   keys: z.array(namedJwk),
+  /** SHA-256 of each event of the record as the shop stores it today: a change is named by its event. */
+  stored: z.array(sha256),
 });
 /** What anybody with the QR code sees. */
 export type PublicProof = z.output<typeof publicProofAnswer>;

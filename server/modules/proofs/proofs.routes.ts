@@ -2,7 +2,7 @@ import type { Router } from 'express';
 import * as contract from '@shared/contracts/proofs.contract';
 import type { Deps } from '../../deps';
 import { officeRoute } from '../../http/route';
-import { getProof, issueProof, listProofs, revokeProof } from './proofs.usecases';
+import { getProof, issueProof, listProofs, printableProof, revokeProof } from './proofs.usecases';
 
 /** Adds the addresses by which the office finds, issues, prints and revokes proofs. */
 export const proofRoutes = (router: Router, deps: Deps): void => {
@@ -14,9 +14,9 @@ export const proofRoutes = (router: Router, deps: Deps): void => {
   );
   officeRoute(router, deps, contract.getProof, ({ tx, params }) => getProof(deps, tx, params.id));
   officeRoute(router, deps, contract.proofPdf, async ({ tx, params, query, setHeader }) => {
-    const proof = await getProof(deps, tx, params.id);
-    const bytes = await deps.proofPdf(proof.jws, query);
-    setHeader('Content-Disposition', `inline; filename="${proof.number}-${proof.issue}-${query.size}.pdf"`);
+    const proof = await printableProof(deps, tx, params.id);
+    const bytes = await deps.proofPdf(proof, query);
+    setHeader('Content-Disposition', `inline; filename="${proof.row.number}-${proof.row.issue}-${query.size}.pdf"`);
     return bytes;
   });
   officeRoute(router, deps, contract.revokeProof, ({ tx, caller, params, body }) =>

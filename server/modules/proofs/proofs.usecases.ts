@@ -13,11 +13,13 @@ import { standingWalk, type StandingWalk } from '../sync/refreshWalk';
 import { walkUnknown } from '../sync/sync.errors';
 import { issueBlocks } from './issueBlocks';
 import { jobAndJoint } from './issueFacts.repository';
+import type { PrintableProof } from './proofPdf';
 import { makeProof, type ProofHead, type ProofSource } from './proofs.document';
 import { notInForce, proofBlocked, proofUnknown, recordBroken } from './proofs.errors';
 import { publicUrlOf, toProofRow, toProofWhole } from './proofs.mapping';
 import * as store from './proofs.repository';
 import type { ProofRecord } from './proofs.repository';
+import { storedHashes } from './storedHashes';
 import { brokenEvent } from './verifyStored';
 
 /** Proofs found by VIN, serial, job, claim, number or customer; the newest where nothing is asked. */
@@ -37,6 +39,13 @@ const demandProof = async (tx: ShopTx, id: string): Promise<ProofRecord> => {
 /** A proof with its signed document. Throws 404 `proof.unknown`. */
 export const getProof = async (deps: Deps, tx: ShopTx, id: string): Promise<ProofWhole> =>
   toProofWhole(await demandProof(tx, id), deps.config.publicUrl);
+
+/** A proof with everything its page is made from. Throws 404 `proof.unknown`. */
+export const printableProof = async (deps: Deps, tx: ShopTx, id: string): Promise<PrintableProof> => {
+  const row = await demandProof(tx, id);
+  const { signingKeys: keys } = await deps.keyring(tx);
+  return { row, keys, storedHashes: await storedHashes(tx, row) };
+};
 
 const sourceOf = async (deps: Deps, tx: ShopTx, standing: StandingWalk): Promise<ProofSource> => {
   const { row, branches } = standing;

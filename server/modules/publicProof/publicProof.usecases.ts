@@ -8,6 +8,7 @@ import type { ShopTx } from '../../tenancy/withShop';
 import { proofUnknown } from '../proofs/proofs.errors';
 import { publicUrlOf } from '../proofs/proofs.mapping';
 import { findProofByToken, issuesOf, type ProofRecord } from '../proofs/proofs.repository';
+import { storedHashes } from '../proofs/storedHashes';
 import { findShop } from '../shops/shops.repository';
 
 const successorOf = async (deps: Deps, tx: ShopTx, proof: ProofRecord): Promise<PublicProof['supersededBy']> => {
@@ -33,6 +34,7 @@ export const publicProofByToken = async (deps: Deps, tx: ShopTx, token: string):
     supersededBy: await successorOf(deps, tx, proof),
     jws: withholdSide(proof.jws, SHOWN_OUTSIDE),
     keys: (await deps.keyring(tx)).signingKeys,
+    stored: await storedHashes(tx, proof),
   };
 };
 
