@@ -75,7 +75,10 @@ export const getProof = defineEndpoint({
   params: idParams,
   responses: { 200: proofWhole },
 });
-/** The page, made from the stored document: the same bytes every time. */
+/**
+ * The page, made from the stored document: the same bytes every time, but for a stamp where the proof is worth less today.
+ * Errors: `proof.unknown` 404, `proof.documentBroken` 409 where the stored document cannot be read any more.
+ */
 export const proofPdf = defineEndpoint({
   method: 'GET',
   path: '/api/proofs/:id/pdf',

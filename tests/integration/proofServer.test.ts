@@ -123,7 +123,7 @@ describe('a proof of the server', () => {
     await stored(server, `update proofs set jws = 'x' where id = $1`, [proof.id]);
     await stored(server, `alter table proofs enable trigger all`);
     const reply = await pdfOf(proof);
-    expect([reply.status, reply.body.error?.code]).toEqual([409, 'proof.unreadable']);
+    expect([reply.status, reply.body.error?.code]).toEqual([409, 'proof.documentBroken']);
   });
 
   it('is stamped once it was revoked', async () => {

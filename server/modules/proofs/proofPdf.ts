@@ -24,11 +24,11 @@ function stampsOf({ state, revokedReason }: ProofRecord): ProofStamp[] {
   return state === 'superseded' ? [{ code: 'superseded' }] : [];
 }
 
-/** Prints in a thread of its own. Throws 409 `proof.unreadable` where the stored document is none any more (fault 21). */
+/** Prints in a thread of its own. Throws 409 `proof.documentBroken` where the stored document is none any more (fault 21). */
 export const pdfOfProof: ProofPdf = async ({ row, keys, storedHashes }, { size, language: lang }) => {
   const plain = keys.map(({ kty, crv, x, y }) => ({ kty, crv, x, y }));
   const job = { sealed: row.jws, keys: plain, storedHashes, stamps: stampsOf(row), size, lang };
   const bytes = await printSealedProof(job);
-  if (!bytes) throw conflict('proof.unreadable', 'The stored document of this proof cannot be read any more.');
+  if (!bytes) throw conflict('proof.documentBroken', 'The stored document of this proof cannot be read any more.');
   return bytes;
 };

@@ -69,6 +69,8 @@ export const officeErrors = {
     unknown: 'There is no such proof.',
     blocked: 'A proof cannot be issued yet.',
     notInForce: 'This proof is not in force any more.',
+    documentBroken:
+      'The stored document of this proof cannot be read any more: nothing is printed. Restore it from a backup.',
     alreadyIssued: 'The proof {number} of this record was issued already, and nothing has changed since.',
     notIssuable: 'Only a final assembly or a recheck has a proof; this walk had another purpose.',
     voided: 'The walk was voided.',

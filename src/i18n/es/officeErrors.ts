@@ -72,6 +72,8 @@ export const officeErrors: SameKeys<typeof en> = {
     unknown: 'Esa prueba no existe.',
     blocked: 'Todavía no se puede emitir una prueba.',
     notInForce: 'Esta prueba ya no está en vigor.',
+    documentBroken:
+      'El documento guardado de esta prueba ya no se puede leer: no se imprime nada. Recupérelo de una copia.',
     alreadyIssued: 'La prueba {number} de este registro ya se emitió y nada ha cambiado desde entonces.',
     notIssuable: 'Solo un montaje final o un repaso tienen prueba; este recorrido tenía otro fin.',
     voided: 'El recorrido fue anulado.',
