@@ -109,16 +109,16 @@ export async function enrolTablet(
   return ok({ identity: await keepIdentity(deps, answer.value), bearer: bearerOf(answer.value, deps.clock) });
 }
 
-/** Opens the demo's door: this browser becomes a tablet of the demo shop. */
+/** Opens the demo's door: this browser becomes a tablet of the demo shop; the same browser again is the same tablet. */
 export async function enrolDemoTablet(
   deps: TabletAuthDeps,
 ): Promise<Result<{ identity: TabletIdentity; bearer: Bearer }, ServerFailure>> {
-  const key = await keyToEnrol(deps);
-  const answer = await deps.client.call<typeof demoTablet>({
-    method: 'POST',
-    path: '/api/demo/tablet',
-    body: { publicJwk: key.publicJwk },
-  });
+  const ask = ({ publicJwk }: DeviceKey) =>
+    deps.client.call<typeof demoTablet>({ method: 'POST', path: '/api/demo/tablet', body: { publicJwk } });
+  let answer = await ask(await deviceKeyOf(deps));
+  if (answer.kind === 'refused' && answer.refusal.code === 'enrolment.keyTaken') {
+    answer = await ask(await freshDeviceKey(deps));
+  }
   if (answer.kind !== 'done') return err(failureOf(answer));
   return ok({ identity: await keepIdentity(deps, answer.value), bearer: bearerOf(answer.value, deps.clock) });
 }
