@@ -38,7 +38,7 @@ it('walks on by the revision it began with when another one arrives, also after 
       { ...old, revision: 2, hash, document },
     ],
   };
-  await real.tablet.sync.poke();
+  await real.tablet.sync.press();
   expect(Object.keys(real.tablet.catalogue.procedures).sort()).toEqual([old.hash, hash].sort());
   expect(log.snapshot()).toMatchObject({ head: before.head, view: before.view });
 
