@@ -19,6 +19,7 @@ import { WalkShelf } from './walkShelf';
 
 const OFFLINE_DAYS = 14;
 const POKE_AFTER_MS = 250;
+const HOUSEKEEPING_AFTER_MS = 2_000;
 
 /** This tablet: who it is, what it knows, the walks on it, and what it sends. One for the whole program. */
 export class Tablet {
@@ -63,6 +64,11 @@ export class Tablet {
     await loadCore(this.#core);
     if (this.#core.trouble.code !== null) return;
     this.sync.start();
+    this.#core.world.setTimer(() => void this.#keepHouse(), HOUSEKEEPING_AFTER_MS);
+  }
+
+  /** What may wait until the first screen stands: a promise of the browser, kept space, walks that had their time. */
+  async #keepHouse(): Promise<void> {
     await askToPersist(this.#core.world.storage);
     try {
       this.#core.trouble.low = !(await keepBallast(this.#core.database));

@@ -58,7 +58,7 @@ export function realWorld(shop: FakeShop, before?: RealWorld): RealWorld {
     random: () => 0.5,
     isOnline: () => network.online,
     // Only what follows an event at once happens by itself; for the rest a test pokes.
-    setTimer: (work, ms) => (ms < 1000 ? setTimeout(work, ms) : null),
+    setTimer: (work, ms) => (ms < 500 ? setTimeout(work, ms) : null),
     clearTimer: (timer) => clearTimeout(timer as NodeJS.Timeout | undefined),
     tell: () => undefined,
     listen: () => undefined,
