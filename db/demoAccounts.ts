@@ -25,6 +25,6 @@ export const DEMO_ACCOUNTS: readonly DemoAccount[] = [
   account(2, 'Tobias Renquist', '730294', ['supervisor']),
   account(3, 'Nadia Okwuosa', '592037', ['technician']),
   account(4, 'Perrin Halloway', '268413', ['clerk']),
-  account(5, 'Marit Sandvoll', '914605', ['keeper']),
+  account(5, 'Oda Fennimore-Hale', '914605', ['keeper']),
   account(6, 'Desmond Achterberg', '347862', ['admin', 'supervisor']),
 ];
