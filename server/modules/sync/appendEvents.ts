@@ -27,6 +27,8 @@ export interface NewEvents {
   branches: readonly Branch[];
   /** The event before the first of them; null where they begin a walk. */
   parent: (Place & { hash: string }) | null;
+  /** Their signatures, being verified on other cores while they are decided again; nothing is written before. */
+  verified?: Promise<void>;
   /** Where they go, if it is not what follows from the parent: a forced takeover begins a branch. */
   target?: Target;
 }
@@ -155,6 +157,7 @@ const write = async (deps: Deps, tx: ShopTx, fresh: NewEvents, judged: Judged, t
  */
 export const appendEvents = async (deps: Deps, tx: ShopTx, fresh: NewEvents): Promise<Appended> => {
   const judged = await judgeAll(deps, tx, fresh);
+  await fresh.verified;
   const refused = judged.refusal ? refusedFrom(fresh.events.slice(judged.accepted.length), judged.refusal) : [];
   await insertQuarantined(tx, fresh.walk, fresh.tablet, refused, deps.clock.now());
   const target = fresh.target ?? targetFor(fresh.branches, fresh.parent);

@@ -34,7 +34,12 @@ export interface Batch {
 }
 
 /** New events must be this tablet's own and signed with its key; what is stored already was checked when it came. */
-const demandOwn = async (deps: Deps, tablet: TabletCaller, events: readonly BatchEvent[], offset: number) => {
+const demandOwn = async (
+  deps: Deps,
+  tablet: TabletCaller,
+  events: readonly BatchEvent[],
+  offset: number,
+): Promise<void> => {
   const keys = new Map([[tablet.kid, tablet.publicJwk]]);
   const checks = events.map(async ({ signed, envelope }, index) => {
     if (envelope.tablet !== tablet.id) {
@@ -88,8 +93,11 @@ const store = async (
   const fresh = events.slice(stored);
   const first = fresh[0]?.envelope;
   if (!first) return null;
-  await demandOwn(deps, tablet, fresh, stored);
+  const verified = demandOwn(deps, tablet, fresh, stored);
+  // Whoever fails first is the answer: a refusal on the way must not leave the other one unheard.
+  verified.catch(() => undefined);
   if (known.quarantined.has(first.prev)) {
+    await verified;
     await quarantineFollowers(deps, tx, batch.walk, tablet.id, fresh);
     return { branch: batch.branch, accepted: [], refused: [] };
   }
@@ -103,6 +111,7 @@ const store = async (
     events: fresh,
     branches: known.branches,
     parent,
+    verified,
   });
 };
 
