@@ -1,15 +1,13 @@
 import { phrase, word } from '@shared/proof/phrase';
+import { groupedHash } from '@shared/proof/proofText';
 import { spoken, styleOf, textBlock, type Block, type PageSource } from '../block';
-
-/** A hash in groups of four, as somebody reads it out. */
-const grouped = (hash: string): string => hash.match(/.{1,4}/g)?.join(' ') ?? '';
 
 /** Fingerprint of the record, how to check it, and that the manual comes first; at the foot of page 1. */
 export function footBlock(source: PageSource, width: number): Block {
   const { paper, document, speaker } = source;
   const code = [
     { text: `${word('sheet.fingerprint', speaker.language)} `, style: styleOf(source, 'foot') },
-    { text: grouped(document.sheet.fingerprint), style: styleOf(source, 'footCode') },
+    { text: groupedHash(document.sheet.fingerprint), style: styleOf(source, 'footCode') },
   ];
   const fingerprint = paper.wrap(code, width);
   const scan = textBlock(source, word('sheet.scan', speaker.language), 'foot', width);

@@ -1,45 +1,13 @@
-import { phrase, word } from '@shared/proof/phrase';
-import { formatClock } from '@shared/proof/proofTime';
-import type { ProofDeviation, ProofLine, ProofPlace } from '@shared/proof/sheet';
+import { word } from '@shared/proof/phrase';
+import { deviationEntry, lineEntry, type ProofEntry } from '@shared/proof/proofText';
+import type { ProofLine } from '@shared/proof/sheet';
 import type { PhraseKey } from '@shared/proof/words/en';
-import { spoken, textBlock, type Block, type PageSource } from '../block';
+import { textBlock, type Block, type PageSource } from '../block';
 import { ink } from '../ink';
 import type { TextBlock } from '../paper';
 
-/** One entry of a list: where it was, and what there is to say about it. */
-interface Entry {
-  where: string;
-  lines: string[];
-}
-
-/** `bolt 5 · pass 3`, in the page's language. */
-export function placeText(source: PageSource, place: ProofPlace): string {
-  const key: PhraseKey = place.label === null ? 'at.joint' : `at.${place.noun}`;
-  const where = spoken(source, phrase(key, { label: place.label ?? '' }));
-  if (place.pass === null) return where;
-  if (place.round === null) return spoken(source, phrase('at.pass', { where, pass: place.pass }));
-  return spoken(source, phrase('at.round', { where, pass: place.pass, round: place.round }));
-}
-
-/** A deviation with every decision about it and the time of each. */
-function deviationEntry(source: PageSource, deviation: ProofDeviation): Entry {
-  const clock = (at: string): string => ` (${formatClock(at, source.speaker)})`;
-  return {
-    where: placeText(source, deviation.place),
-    lines: [
-      spoken(source, deviation.found) + clock(deviation.at),
-      ...deviation.settlings.map(({ said, at }) => spoken(source, said) + clock(at)),
-    ],
-  };
-}
-
-const lineEntry = (source: PageSource, { place, said }: ProofLine): Entry => ({
-  where: placeText(source, place),
-  lines: [spoken(source, said)],
-});
-
 /** Width kept for the places: the widest of them, at most two fifths. */
-function whereWidth(source: PageSource, entries: readonly Entry[], width: number): number {
+function whereWidth(source: PageSource, entries: readonly ProofEntry[], width: number): number {
   const widest = Math.max(
     0,
     ...entries.map(({ where }) => textBlock(source, where, 'cell', width).lines[0]?.width ?? 0),
@@ -47,7 +15,7 @@ function whereWidth(source: PageSource, entries: readonly Entry[], width: number
   return Math.min(widest, width * 0.4) + 9;
 }
 
-function entriesBlock(source: PageSource, heading: PhraseKey, entries: readonly Entry[], width: number): Block {
+function entriesBlock(source: PageSource, heading: PhraseKey, entries: readonly ProofEntry[], width: number): Block {
   const { paper, speaker } = source;
   if (entries.length === 0) return { height: 0, draw: () => undefined };
   const title = textBlock(source, word(heading, speaker.language), 'heading', width);
@@ -93,7 +61,7 @@ export function deviationsBlock(source: PageSource, width: number, from = 0, to 
     const text = textBlock(source, word('sheet.noDeviations', source.speaker.language), 'cell', width);
     return { height: text.height, draw: (x, y) => source.paper.leaf('P', () => source.paper.drawBlock(text, x, y)) };
   }
-  const entries = deviations.slice(from, to).map((deviation) => deviationEntry(source, deviation));
+  const entries = deviations.slice(from, to).map((deviation) => deviationEntry(deviation, source.speaker));
   return entriesBlock(source, 'sheet.deviations', entries, width);
 }
 
@@ -102,7 +70,7 @@ export function linesBlock(source: PageSource, heading: PhraseKey, lines: readon
   return entriesBlock(
     source,
     heading,
-    lines.map((line) => lineEntry(source, line)),
+    lines.map((line) => lineEntry(line, source.speaker)),
     width,
   );
 }

@@ -1,4 +1,5 @@
-import { phrase, word } from '@shared/proof/phrase';
+import { word } from '@shared/proof/phrase';
+import { noteLines } from '@shared/proof/proofText';
 import type { PhraseKey } from '@shared/proof/words/en';
 import { spoken, styleOf, type Block, type PageSource } from '../block';
 
@@ -23,11 +24,5 @@ export function preparationBlock(source: PageSource, width: number): Block {
 
 /** What people wrote down, and how many photographs are kept. */
 export function notesBlock(source: PageSource, width: number): Block {
-  const { notes, photos } = source.document.sheet;
-  const said = notes.map(({ by, at, text }) =>
-    spoken(source, phrase('note.row', { person: { person: by }, time: { time: at }, text })),
-  );
-  if (source.document.note !== '') said.unshift(source.document.note);
-  if (photos > 0) said.push(spoken(source, phrase('photos.count', { n: photos })));
-  return paragraph(source, 'sheet.notes', said.join(' · '), width);
+  return paragraph(source, 'sheet.notes', noteLines(source.document, source.speaker).join(' · '), width);
 }

@@ -1,9 +1,17 @@
 import { word } from '@shared/proof/phrase';
+import {
+  cellText,
+  endHeadLines,
+  endUnitOf,
+  headLines,
+  legendOf,
+  type CellMark,
+  type CellText,
+} from '@shared/proof/readingText';
 import type { ProofColumn, ProofRow } from '@shared/proof/sheet';
-import { unitSymbol, type Unit } from '@shared/quantity/unit';
+import type { Unit } from '@shared/quantity/unit';
 import { styleOf, textBlock, type Block, type PageSource } from '../block';
 import { ink, type StyleName } from '../ink';
-import { cellText, endUnitOf, legendOf, windowLines, type CellMark, type CellText } from './readingCells';
 
 const PAD = 4;
 /** A strip under this width would show nothing. */
@@ -32,36 +40,20 @@ export interface ReadingTablePlan {
 }
 
 const marksWidth = (source: PageSource, marks: readonly CellMark[]): number =>
-  marks.reduce((sum, { text, style }) => sum + source.paper.widthOf(text, styleOf(source, style)) + 2, 0);
+  marks.reduce((sum, { text, tone }) => sum + source.paper.widthOf(text, styleOf(source, TONES[tone])) + 2, 0);
+
+const TONES: Record<CellMark['tone'], StyleName> = { quiet: 'tiny', off: 'tinyOff', accepted: 'tinySteel' };
 
 const widest = (source: PageSource, texts: readonly string[], name: StyleName): number => {
   const style = styleOf(source, name);
   return Math.max(0, ...texts.map((text) => source.paper.widthOf(text, style)));
 };
 
-function headLines(source: PageSource, column: ProofColumn): string[] {
-  const { language } = source.speaker;
-  const round = column.round === null ? `${column.pass}` : `${column.pass}.${column.round}`;
-  const kind = column.kind === 'turn' ? 'column.turn' : column.kind === 'check' ? 'column.check' : null;
-  return [
-    round,
-    ...windowLines(source, column.windows),
-    ...(kind ? [word(kind, language)] : []),
-    ...(column.source ? [word(`short.${column.source}`, language)] : []),
-  ];
-}
-
 function planColumn(source: PageSource, column: ProofColumn, index: number, rows: readonly ProofRow[]): Plan {
   const endUnit = endUnitOf(rows, index);
-  const texts = rows.map((row) => cellText(source, { column, endUnit }, row, row.cells[index] ?? null));
-  const head = headLines(source, column);
-  const endHead = column.hasEnd
-    ? [
-        word('column.end', source.speaker.language),
-        ...(endUnit ? [unitSymbol(endUnit)] : []),
-        ...windowLines(source, column.endWindows).slice(0, 1),
-      ]
-    : [];
+  const texts = rows.map((row) => cellText(source.speaker, { column, endUnit }, row, row.cells[index] ?? null));
+  const head = headLines(source.speaker, column);
+  const endHead = endHeadLines(source.speaker, column, endUnit);
   const value = widest(
     source,
     texts.map((text) => text.value),
@@ -106,8 +98,8 @@ function drawStrip(source: PageSource, share: number, x: number, y: number, widt
 
 function drawMarked(source: PageSource, marks: readonly CellMark[], x: number, y: number): void {
   let left = x + 1.5;
-  for (const { text, style } of marks) {
-    const own = styleOf(source, style);
+  for (const { text, tone } of marks) {
+    const own = styleOf(source, TONES[tone]);
     source.paper.line(text, own, left, y + (styleOf(source, 'figure').leading - own.leading) * 0.6);
     left += source.paper.widthOf(text, own) + 2;
   }
@@ -240,7 +232,7 @@ function tableOf(source: PageSource, indexes: readonly number[], rows: readonly 
 function tableBlock(table: Table, width: number): Block {
   const { source, rows, headHeight, rowHeight } = table;
   const legend = legendOf(
-    source,
+    source.speaker,
     table.plans.map(({ column }) => column),
     rows,
   );

@@ -1,5 +1,6 @@
 import { create } from 'qrcode';
-import { phrase, word, type Phrase } from '@shared/proof/phrase';
+import { phrase, word } from '@shared/proof/phrase';
+import { meaningText, signatureLines, signerText } from '@shared/proof/proofText';
 import type { ProofSignature } from '@shared/proof/sheet';
 import { spoken, textBlock, type Block, type PageSource } from '../block';
 import { ink } from '../ink';
@@ -7,38 +8,13 @@ import type { TextBlock } from '../paper';
 
 const QR = 86;
 const GAP = 15;
-const MINUTE = 60_000;
-/** Sooner than this it was not offline in any way that matters. */
-const LEAST_DELAY = 5 * MINUTE;
-
-function delayPhrase(ms: number): Phrase {
-  const minutes = Math.round(ms / MINUTE);
-  if (minutes < 120) return phrase('delay.minutes', { n: minutes });
-  const hours = Math.round(minutes / 60);
-  return hours < 48 ? phrase('delay.hours', { n: hours }) : phrase('delay.days', { n: Math.round(hours / 24) });
-}
-
-/** Time, place, delay and the shop's word on the PIN, one line each (D2). */
-export function signatureLines(source: PageSource, sign: ProofSignature): string[] {
-  const time = { time: sign.at };
-  const lines = [
-    sign.tablet === null ? phrase('sign.office', { time }) : phrase('sign.tablet', { time, tablet: sign.tablet }),
-  ];
-  const late = sign.received === null ? 0 : Date.parse(sign.received) - Date.parse(sign.at);
-  if (sign.tablet !== null && late >= LEAST_DELAY)
-    lines.push(phrase('sign.delay', { delay: { phrase: delayPhrase(late) } }));
-  if (sign.confirmed !== null) lines.push(phrase('sign.pin', { time: { time: sign.confirmed } }));
-  return lines.map((line) => spoken(source, line));
-}
 
 function signatureTexts(source: PageSource, sign: ProofSignature, width: number): TextBlock[] {
-  const role = word(`role.${sign.role}`, source.speaker.language);
-  const quote = source.speaker.language === 'en' ? ['“', '”'] : ['«', '»'];
-  const meaning = word(`meaning.${sign.meaning}`, source.speaker.language);
+  const { speaker } = source;
   return [
-    textBlock(source, spoken(source, phrase('sign.line', { person: { person: sign.by }, role })), 'signer', width),
-    textBlock(source, quote.join(meaning), 'small', width),
-    ...signatureLines(source, sign).map((line) => textBlock(source, line, 'small', width)),
+    textBlock(source, signerText(sign, speaker), 'signer', width),
+    textBlock(source, meaningText(sign, speaker), 'small', width),
+    ...signatureLines(sign, speaker).map((line) => textBlock(source, line, 'small', width)),
   ];
 }
 

@@ -1,7 +1,7 @@
-import { phrase, word } from '@shared/proof/phrase';
-import { formatDay } from '@shared/proof/proofTime';
+import { word } from '@shared/proof/phrase';
+import { wrenchDue, wrenchUse } from '@shared/proof/proofText';
 import type { ProofWrench } from '@shared/proof/sheet';
-import { emptyBlock, spoken, styleOf, textBlock, type Block, type PageSource } from '../block';
+import { emptyBlock, styleOf, textBlock, type Block, type PageSource } from '../block';
 import { ink, type StyleName } from '../ink';
 import type { TextBlock } from '../paper';
 
@@ -9,36 +9,14 @@ const GAP = 7;
 /** What a column gets at least: its words, but for the last two, which may be broken. */
 const LEAST_DUE = 52;
 
-function useText(source: PageSource, wrench: ProofWrench): string {
-  const { language } = source.speaker;
-  const parts = [
-    word(wrench.inDate ? 'wrench.inDate' : 'wrench.lapsed', language),
-    word(wrench.how === 'scanned' ? 'wrench.scanned' : 'wrench.picked', language),
-  ];
-  if (wrench.allowedBy !== null)
-    parts.push(spoken(source, phrase('wrench.override', { person: { person: wrench.allowedBy } })));
-  for (const tag of wrench.adapters) parts.push(spoken(source, phrase('wrench.adapter', { tag })));
-  if (wrench.out !== null) parts.push(word(`wrench.${wrench.out}`, language));
-  parts.push(spoken(source, phrase('wrench.used', { n: wrench.readings })));
-  return parts.join(', ');
-}
-
-function dueText(source: PageSource, { due }: ProofWrench): string {
-  const parts: string[] = [];
-  if (due.date !== null) parts.push(formatDay(due.date, source.speaker).replaceAll(' ', '\u00a0'));
-  if (due.cycles !== null)
-    parts.push(spoken(source, phrase('wrench.cycles', { cycles: due.cycles })).replaceAll(' ', '\u00a0'));
-  return parts.join(' ') || word('wrench.noDue', source.speaker.language);
-}
-
 function rowTexts(source: PageSource, wrench: ProofWrench): [string, StyleName][] {
   const none = word('wrench.noCertificate', source.speaker.language);
   return [
     [`${wrench.tag}, ${wrench.drive}`, 'cell'],
     [wrench.serial, 'figure'],
     [wrench.certificate ?? none, 'figure'],
-    [dueText(source, wrench), 'cell'],
-    [useText(source, wrench), 'cell'],
+    [wrenchDue(wrench, source.speaker), 'cell'],
+    [wrenchUse(wrench, source.speaker), 'cell'],
   ];
 }
 

@@ -1,16 +1,14 @@
-import { formatDecimal, formatQuantity } from '@shared/quantity/format';
-import { decimalToRational, toNumber } from '@shared/quantity/rational';
-import { unitSymbol, type Unit } from '@shared/quantity/unit';
-import type { Window } from '@shared/quantity/window';
-import { phrase, word } from '@shared/proof/phrase';
-import type { ProofCell, ProofColumn, ProofRow } from '@shared/proof/sheet';
-import { spoken, type PageSource } from '../block';
-import type { StyleName } from '../ink';
+import { formatDecimal, formatQuantity } from '../quantity/format';
+import { decimalToRational, toNumber } from '../quantity/rational';
+import { unitSymbol, type Unit } from '../quantity/unit';
+import type { Window } from '../quantity/window';
+import { phrase, say, word, type Speaker } from './phrase';
+import type { ProofCell, ProofColumn, ProofRow } from './sheet';
 
-/** A mark behind a figure, in small type. */
+/** A mark behind a figure, in small type: a fact, something off, or something a supervisor accepted. */
 export interface CellMark {
   text: string;
-  style: StyleName;
+  tone: 'quiet' | 'off' | 'accepted';
 }
 
 /** What stands in one cell of the table. */
@@ -28,46 +26,46 @@ const number = (text: string): number => toNumber(decimalToRational(text));
 /** The unit a column is written in: that of its window. */
 export const unitOf = (column: ProofColumn): Unit | null => column.windows[0]?.window.unit ?? null;
 
-const limits = ({ low, high }: Window, source: PageSource): string =>
-  `${formatDecimal(low, source.speaker.language)}–${formatDecimal(high, source.speaker.language)}`;
+const limits = ({ low, high }: Window, speaker: Speaker): string =>
+  `${formatDecimal(low, speaker.language)}–${formatDecimal(high, speaker.language)}`;
 
 /** Windows as head lines: figures, then the unit; the group's letter before them where groups differ. */
-export function windowLines(source: PageSource, windows: ProofColumn['windows']): string[] {
+export function windowLines(speaker: Speaker, windows: ProofColumn['windows']): string[] {
   const unit = windows[0]?.window.unit;
   if (unit === undefined) return [];
   const suffix = unit === 'deg' ? '°' : '';
   const figures = windows.map(({ groups, window }) => {
-    const own = limits(window, source) + suffix;
+    const own = limits(window, speaker) + suffix;
     return windows.length > 1 ? `${groups.join('')} ${own}` : own;
   });
   return suffix ? figures : [...figures, unitSymbol(unit)];
 }
 
-function verdictMark(source: PageSource, verdict: ProofCell['verdict'], accepted: boolean): CellMark[] {
-  const { language } = source.speaker;
-  if (verdict === null || verdict === 'in') return accepted ? [acceptedMark(source)] : [];
-  const marks: CellMark[] = [{ text: word(`verdict.${verdict}`, language), style: 'tinyOff' }];
-  return accepted ? [...marks, acceptedMark(source)] : marks;
+function verdictMark(speaker: Speaker, verdict: ProofCell['verdict'], accepted: boolean): CellMark[] {
+  const { language } = speaker;
+  if (verdict === null || verdict === 'in') return accepted ? [acceptedMark(speaker)] : [];
+  const marks: CellMark[] = [{ text: word(`verdict.${verdict}`, language), tone: 'off' }];
+  return accepted ? [...marks, acceptedMark(speaker)] : marks;
 }
 
-const acceptedMark = (source: PageSource): CellMark => ({
-  text: word('cell.accepted', source.speaker.language),
-  style: 'tinySteel',
+const acceptedMark = (speaker: Speaker): CellMark => ({
+  text: word('cell.accepted', speaker.language),
+  tone: 'accepted',
 });
 
-function marksOf(source: PageSource, column: ProofColumn, cell: ProofCell): CellMark[] {
-  const { language } = source.speaker;
+function marksOf(speaker: Speaker, column: ProofColumn, cell: ProofCell): CellMark[] {
+  const { language } = speaker;
   const marks: CellMark[] = [];
-  if (cell.pulls > 1) marks.push({ text: `×${cell.pulls}`, style: 'tiny' });
+  if (cell.pulls > 1) marks.push({ text: `×${cell.pulls}`, tone: 'quiet' });
   if (column.source === null)
-    marks.push({ text: cell.sources.map((one) => word(`letter.${one}`, language)).join('+'), style: 'tiny' });
-  if (cell.moved === true) marks.push({ text: 'm', style: 'tiny' });
-  if (cell.outOfOrder) marks.push({ text: '†', style: 'tiny' });
-  return [...marks, ...verdictMark(source, cell.verdict, cell.status === 'accepted')];
+    marks.push({ text: cell.sources.map((one) => word(`letter.${one}`, language)).join('+'), tone: 'quiet' });
+  if (cell.moved === true) marks.push({ text: 'm', tone: 'quiet' });
+  if (cell.outOfOrder) marks.push({ text: '†', tone: 'quiet' });
+  return [...marks, ...verdictMark(speaker, cell.verdict, cell.status === 'accepted')];
 }
 
-function valueOf(source: PageSource, column: ProofColumn, cell: ProofCell): string {
-  const { language } = source.speaker;
+function valueOf(speaker: Speaker, column: ProofColumn, cell: ProofCell): string {
+  const { language } = speaker;
   if (cell.mark !== null) return word(cell.mark === 'moved' ? 'cell.markMoved' : 'cell.asMarked', language);
   if (cell.value === null) return word('cell.none', language);
   const own = cell.value.unit === unitOf(column);
@@ -92,29 +90,29 @@ export function endUnitOf(rows: readonly ProofRow[], index: number): Unit | null
 
 /** Text and marks of one cell. */
 export function cellText(
-  source: PageSource,
+  speaker: Speaker,
   { column, endUnit }: { column: ProofColumn; endUnit: Unit | null },
   row: ProofRow,
   cell: ProofCell | null,
 ): CellText {
-  const { language } = source.speaker;
+  const { language } = speaker;
   if (!cell) return { value: '', marks: [], end: '', endMarks: [], inWindow: null };
   const { end } = cell;
   const endText =
     end &&
     (end.value.unit === endUnit ? formatDecimal(end.value.value, language) : formatQuantity(end.value, language));
   return {
-    value: valueOf(source, column, cell),
-    marks: marksOf(source, column, cell),
+    value: valueOf(speaker, column, cell),
+    marks: marksOf(speaker, column, cell),
     end: endText ?? '',
-    endMarks: end ? verdictMark(source, end.verdict, false) : [],
+    endMarks: end ? verdictMark(speaker, end.verdict, false) : [],
     inWindow: placeInWindow(column, row, cell),
   };
 }
 
 /** What the marks in these columns mean, for the line under the table. */
-export function legendOf(source: PageSource, columns: readonly ProofColumn[], rows: readonly ProofRow[]): string {
-  const { language } = source.speaker;
+export function legendOf(speaker: Speaker, columns: readonly ProofColumn[], rows: readonly ProofRow[]): string {
+  const { language } = speaker;
   const cells = rows.flatMap((row) => row.cells).filter((cell) => cell !== null);
   const parts: string[] = [];
   const mixed = columns.some((column) => column.source === null && column.kind !== 'check');
@@ -122,11 +120,31 @@ export function legendOf(source: PageSource, columns: readonly ProofColumn[], ro
     const sources = [...new Set(cells.flatMap((cell) => cell.sources))];
     for (const one of sources) {
       const params = { letter: word(`letter.${one}`, language), word: word(`short.${one}`, language) };
-      parts.push(spoken(source, phrase('legend.source', params)));
+      parts.push(say(phrase('legend.source', params), speaker));
     }
   }
   if (cells.some((cell) => cell.pulls > 1)) parts.push(`×2 ${word('legend.pulls', language)}`);
   if (cells.some((cell) => cell.outOfOrder)) parts.push(`† ${word('legend.order', language)}`);
   if (cells.some((cell) => cell.moved === true)) parts.push(word('legend.moved', language));
   return parts.join(' · ');
+}
+
+/** The head of a column: pass (and round), windows, kind of stage, source where all are alike. */
+export function headLines(speaker: Speaker, column: ProofColumn): string[] {
+  const { language } = speaker;
+  const round = column.round === null ? `${column.pass}` : `${column.pass}.${column.round}`;
+  const kind = column.kind === 'turn' ? 'column.turn' : column.kind === 'check' ? 'column.check' : null;
+  return [
+    round,
+    ...windowLines(speaker, column.windows),
+    ...(kind ? [word(kind, language)] : []),
+    ...(column.source ? [word(`short.${column.source}`, language)] : []),
+  ];
+}
+
+/** The head of the end torques beside a turn; empty where none was recorded. */
+export function endHeadLines(speaker: Speaker, column: ProofColumn, endUnit: Unit | null): string[] {
+  if (!column.hasEnd) return [];
+  const unit = endUnit ? [unitSymbol(endUnit)] : [];
+  return [word('column.end', speaker.language), ...unit, ...windowLines(speaker, column.endWindows).slice(0, 1)];
 }
