@@ -9,13 +9,6 @@ export const idParams = z.object({ id });
 export const sha256 = z.string().regex(/^[0-9a-f]{64}$/);
 /** ISO 8601 UTC moment. */
 export const moment = z.iso.datetime();
-/** Calendar day `2026-06-13`. */
-export const day = z.iso.date();
-/** A quantity as typed: decimal string and unit code (J1). */
-export const quantity = z.object({
-  value: z.string().regex(/^-?\d{1,9}(\.\d{1,6})?$/),
-  unit: z.enum(['N.m', 'lbf.ft', 'lbf.in', 'kgf.m', 'deg', 'mm', 'in']),
-});
 /** Lone surrogates and U+0000 can stand neither in a chain nor in the database. */
 const isStorable = (value: string): boolean => !/\p{Surrogate}/u.test(value) && !value.includes('\u0000');
 /** Text somebody typed: trimmed, well-formed, without U+0000. */

@@ -9,5 +9,3 @@ export const recordBroken = (seq: number, code: string): AppError =>
   conflict('walk.broken', 'The stored record does not verify: nothing is issued on it.', { seq, why: code });
 export const notInForce = (state: string): AppError =>
   conflict('proof.notInForce', 'This proof is not in force any more.', { state });
-export const alreadyIssued = (number: string): AppError =>
-  conflict('proof.alreadyIssued', 'The proof of this record was issued already, and nothing has changed.', { number });
