@@ -11,7 +11,9 @@ precacheAndRoute(self.__WB_MANIFEST);
 cleanupOutdatedCaches();
 
 // Every address of the program is the one page; the server's own addresses and the public page are not ours to answer.
-registerRoute(new NavigationRoute(createHandlerBoundToURL('/index.html'), { denylist: [/^\/api\//, /^\/p\//, /^\/verify/] }));
+registerRoute(
+  new NavigationRoute(createHandlerBoundToURL('/index.html'), { denylist: [/^\/api\//, /^\/p\//, /^\/verify/] }),
+);
 
 self.addEventListener('message', (event) => {
   if ((event.data as { type?: unknown } | null)?.type === 'start') void self.skipWaiting();
