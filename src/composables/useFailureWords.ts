@@ -12,7 +12,7 @@ export interface FailureWords {
   whole: (failure: OfficeFailure) => string;
 }
 
-/** Sentences by the code of a failure; what a code needs comes from its details. */
+/** Sentences by the code of a failure; what a sentence needs comes from the failure's details. */
 export function useFailureWords(): FailureWords {
   const i18n = useI18n();
   const { t } = i18n;
@@ -25,9 +25,10 @@ export function useFailureWords(): FailureWords {
       : '';
     return { ...details, wait };
   }
+  /** The office's own sentence, else the one the rules of the walk have everywhere. */
   const happened = (failure: OfficeFailure): string => {
-    const key = `errors.${failure.code}`;
-    return te(key) ? t(key, params(failure)) : t('office.failure.unknown', { code: failure.code });
+    const key = [`office.errors.${failure.code}`, `errors.${failure.code}`].find(te);
+    return key === undefined ? t('office.failure.unknown', { code: failure.code }) : t(key, params(failure));
   };
   const todo = (failure: OfficeFailure): string => {
     const key = `office.todo.${failure.code.replace('.', '_')}`;

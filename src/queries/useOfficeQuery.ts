@@ -11,6 +11,8 @@ export interface OfficeRead<T> {
   /** Shows the last answer while another filter is being read. */
   keep?: boolean;
   refetchEvery?: number;
+  /** Changes only when asked to: what somebody signs must not change under their eyes. */
+  still?: boolean;
 }
 
 /** Reads into the office's own cache. */
@@ -21,6 +23,7 @@ export function useOfficeQuery<T>(read: OfficeRead<T>): UseQueryReturnType<T, Er
       queryFn: ({ signal }) => read.read(signal),
       enabled: computed(() => toValue(read.enabled) ?? true),
       ...(read.keep ? { placeholderData: keepPreviousData } : {}),
+      ...(read.still ? { staleTime: Infinity, refetchOnMount: 'always' as const } : {}),
       ...(read.refetchEvery ? { refetchInterval: read.refetchEvery } : {}),
     },
     officeCache,

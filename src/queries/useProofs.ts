@@ -24,8 +24,8 @@ export function useProof(id: MaybeRefOrGetter<string>) {
 /** Issues the proof of a finished walk, or issues it anew. */
 export function useIssueProof() {
   return useOfficeMutation(
-    ({ walk, note }: { walk: string; note: string }) =>
-      officeApi.call(issueProof, { params: { id: walk }, body: { note } }),
+    ({ walk, ...body }: { walk: string; note: string; language: 'en' | 'es' }) =>
+      officeApi.call(issueProof, { params: { id: walk }, body }),
     [keys.proofs, keys.walks, keys.jobs],
   );
 }

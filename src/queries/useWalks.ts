@@ -43,6 +43,7 @@ export function useWalk(id: MaybeRefOrGetter<string>, branch: MaybeRefOrGetter<n
       const query = wanted === null ? {} : { branch: wanted };
       return officeApi.call(getWalk, { params: { id: toValue(id) }, query }, signal);
     },
+    still: true,
   });
 }
 

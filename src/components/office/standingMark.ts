@@ -1,5 +1,5 @@
 import type { JointStandingName } from '@/composables/jointStanding';
-import type { MarkKind } from './OfficeMark.vue';
+import type { MarkKind } from './markKind';
 
 const MARKS: Readonly<Record<JointStandingName, MarkKind>> = {
   attention: 'look',
