@@ -13,7 +13,11 @@ interface DatabaseError {
   cause?: unknown;
 }
 
-const LOST = new Set(['ECONNREFUSED', 'ECONNRESET', 'EPIPE', 'ETIMEDOUT', '57P01', '57P02', '57P03', '53300', '08006']);
+/** Lost connections, a server that stops or is full, and a transaction that stood in another's way: all come again. */
+const LOST = new Set([
+  ...['ECONNREFUSED', 'ECONNRESET', 'EPIPE', 'ETIMEDOUT'],
+  ...['57P01', '57P02', '57P03', '53300', '08006', '40P01', '40001'],
+]);
 /** The driver gives some of its own failures no code, only a sentence. */
 const LOST_SENTENCE = /^(Connection terminated|timeout exceeded when trying to connect|Client has encountered)/;
 

@@ -9,7 +9,8 @@ import { makeTestSigner, testCrypto } from '../support/testSigner';
 import type { Reply } from './support/calls';
 import { stored, storedHashes } from './support/stored';
 import { enrolledTablet, walked, type TabletWalk, type TestTablet } from './support/testTablet';
-import { makeTestShop } from './support/testShop';
+import { makeJob, makeTestShop } from './support/testShop';
+import { withShop } from '../../server/tenancy/withShop';
 import { startTestServer, type TestServer } from './support/testServer';
 
 let server: TestServer;
@@ -279,6 +280,35 @@ describe('an event the rules refuse', () => {
     const policy = { judgement: 'simple', countersign: 'required', shopOfOne: true } as const;
     const walk = await walked(tablet, { until: (_, book) => book.events.length >= 2 }, { policy });
     expect(receiptOf(await walk.send()).quarantined[0]?.code).toBe('event.neverShopOfOne');
+  });
+});
+
+describe('many tablets at once', () => {
+  it('that bring whole walks signed by the same people wait for each other and never in a circle', async () => {
+    const shop = await makeTestShop(server.deps);
+    const joints = await Promise.all(
+      [1, 2, 3, 4, 5, 6].map((n) => withShop(server.deps.client, shop.id, (tx) => makeJob(tx, 'HEAD-D6', `M-${n}`))),
+    );
+    const tablets = await Promise.all(joints.map(() => enrolledTablet(server, shop)));
+    const { technician, colleague } = shop.people;
+    const walks = await Promise.all(
+      tablets.map((one, index) => {
+        const { id: job, joint = '' } = joints[index] ?? { id: '' };
+        const hands = index % 2 === 0 ? [technician.id, colleague.id] : [colleague.id, technician.id];
+        return walked(one, {}, { job, joint, pulls: hands[0] ?? '', records: hands[1] ?? '' });
+      }),
+    );
+    const receipts = (await Promise.all(walks.map((walk) => walk.send()))).map(receiptOf);
+    for (const { confirmations } of receipts) {
+      expect(confirmations.map(({ result }) => result)).toEqual(['accepted', 'accepted', 'accepted']);
+    }
+    const lines = await stored<{ seq: number; prev: string; hash: string }>(
+      server,
+      'select seq, prev, hash from ledger where shop_id = $1 order by seq',
+      [shop.id],
+    );
+    expect(lines.map(({ seq }) => seq)).toEqual([0, 1, 2, 3, 4, 5]);
+    expect(lines.map(({ prev }) => prev)).toEqual(['0'.repeat(64), ...lines.slice(0, -1).map(({ hash }) => hash)]);
   });
 });
 

@@ -39,11 +39,12 @@ export const missingBlobsOf = async (tx: ShopTx, walk: string): Promise<string[]
   return rows.map((row) => row.sha256);
 };
 
-/** The walks that name a blob. */
+/** The walks that name a blob, in the order of their ids. */
 export const walksNaming = async (tx: ShopTx, sha256: string): Promise<string[]> => {
   const rows = await tx.db
     .select({ walk: walkBlobs.walkId })
     .from(walkBlobs)
-    .where(and(eq(walkBlobs.shopId, tx.shop), eq(walkBlobs.sha256, sha256)));
+    .where(and(eq(walkBlobs.shopId, tx.shop), eq(walkBlobs.sha256, sha256)))
+    .orderBy(walkBlobs.walkId);
   return rows.map((row) => row.walk);
 };

@@ -23,10 +23,10 @@ export const keepBlob = async (
   await deps.blobs.put(tx.shop, sha256, bytes);
   const now = deps.clock.now();
   await insertBlob(tx, { ...kept, tablet: tablet.id, receivedAt: now });
-  for (const walk of await walksNaming(tx, sha256)) {
-    await lockWalk(tx, walk);
-    await refreshWalk(deps, tx, walk, now);
-  }
+  // All locks first and in one order, then the writing: whoever else holds one of them must not wait for us in turn.
+  const walks = await walksNaming(tx, sha256);
+  for (const walk of walks) await lockWalk(tx, walk);
+  for (const walk of walks) await refreshWalk(deps, tx, walk, now);
   return kept;
 };
 

@@ -20,8 +20,8 @@ const sealed = z.looseObject({
   pinVersion: z.number().int().min(0),
 });
 
-/** Why a sealed PIN does not count for its event, or null. */
-const refusalOf = async (
+/** Opens the PIN sealed for an event and compares it: why it does not count, or null. A wrong one is counted. */
+export const judgeSeal = async (
   deps: Deps,
   tx: ShopTx,
   { envelope }: BatchEvent,
@@ -78,8 +78,8 @@ export const writeConfirmation = async (
 const isListed = (type: string): boolean => type !== 'walk.signed';
 
 /**
- * Opens the PIN sealed for an event, compares it and says the result for good (decision 6). The seal itself is not kept.
- * A wrong PIN is no reason to refuse the event: it stays, and whoever it was renews it.
+ * Says for good what came of the PIN sealed for an event (decision 6); the seal itself is not kept. A wrong PIN is no
+ * reason to refuse the event: it stays, and whoever it was renews it.
  */
 export const confirmSeal = async (
   deps: Deps,
@@ -87,10 +87,9 @@ export const confirmSeal = async (
   event: BatchEvent,
   place: Place,
   carried: EventSeal,
-  jwe: string,
+  reason: string | null,
 ): Promise<void> => {
   const { envelope, signed } = event;
-  const reason = await refusalOf(deps, tx, event, carried, jwe);
   const { person, meaning } = carried;
   const result = reason === null ? ('accepted' as const) : ('refused' as const);
   const said = { walk: envelope.walk, ...place, hash: signed.hash, person, meaning, result, reason };

@@ -16,11 +16,12 @@ import {
   type Place,
   type QuarantinedRow,
 } from './chain.repository';
-import { confirmSeal, toConfirmation } from './confirmSeal';
+import { confirmSeal, judgeSeal, toConfirmation } from './confirmSeal';
+import { misshapenField } from './eventShapes';
 import { leaveWork } from '../outbox/outbox.repository';
 import { parseBatch, type BatchEvent } from './parseBatch';
 import { refreshWalk } from './refreshWalk';
-import { sealOf } from './sealOf';
+import { sealOf, type EventSeal } from './sealOf';
 import { confirmationsOfHashes } from './seals.repository';
 import { badBatch, hole } from './sync.errors';
 import { blobsOf } from './walkBlobsOf';
@@ -115,23 +116,59 @@ const store = async (
   });
 };
 
-/** Opens the seals of stored events that no confirmation answers yet; a seal sent again changes nothing. */
-const confirmSeals = async (deps: Deps, tx: ShopTx, batch: Batch, events: readonly BatchEvent[]): Promise<boolean> => {
-  const sealed = events.filter(
-    ({ event, signed }) => sealOf(event) && batch.seals.some((one) => one.hash === signed.hash),
-  );
-  if (sealed.length === 0) return false;
-  const hashes = sealed.map(({ signed }) => signed.hash);
-  const places = await placesOf(tx, batch.walk, hashes);
+/** An event with its seal and the sealed PIN that travelled beside it. */
+interface SealedEvent {
+  event: BatchEvent;
+  carried: EventSeal;
+  jwe: string;
+}
+
+/** The sealed PINs of a batch that no confirmation answers yet; a seal sent again changes nothing. */
+const unansweredSeals = async (tx: ShopTx, batch: Batch, events: readonly BatchEvent[]): Promise<SealedEvent[]> => {
+  const jwes = new Map(batch.seals.map(({ hash, jwe }) => [hash, jwe]));
+  const sealed = events.flatMap((event): SealedEvent[] => {
+    const jwe = jwes.get(event.signed.hash);
+    const hasShape = jwe !== undefined && misshapenField(event.event.type, event.event.data) === null;
+    const carried = hasShape ? sealOf(event.event) : null;
+    return jwe !== undefined && carried ? [{ event, carried, jwe }] : [];
+  });
+  const hashes = sealed.map(({ event }) => event.signed.hash);
   const answered = new Set((await confirmationsOfHashes(tx, batch.walk, hashes)).map((row) => row.hash));
-  for (const event of sealed) {
-    const { hash } = event.signed;
-    const place = places.get(hash);
-    const carried = sealOf(event.event);
-    const jwe = batch.seals.find((one) => one.hash === hash)?.jwe;
-    if (place && carried && jwe && !answered.has(hash)) await confirmSeal(deps, tx, event, place, carried, jwe);
+  return sealed.filter(({ event }) => !answered.has(event.signed.hash));
+};
+
+/**
+ * Compares the PINs before anything is written. Their counts are locked person by person in one order, and the shop's
+ * catalogue counter only afterwards: two tablets that bring signatures of the same people must not wait for each other.
+ */
+const judgeSeals = async (
+  deps: Deps,
+  tx: ShopTx,
+  sealed: readonly SealedEvent[],
+): Promise<(SealedEvent & { reason: string | null })[]> => {
+  const inOrder = [...sealed].sort((a, b) => a.carried.person.localeCompare(b.carried.person));
+  const judged: (SealedEvent & { reason: string | null })[] = [];
+  for (const one of inOrder) {
+    judged.push({ ...one, reason: await judgeSeal(deps, tx, one.event, one.carried, one.jwe) });
   }
-  return sealed.length > answered.size;
+  return judged.sort((a, b) => a.event.envelope.seq - b.event.envelope.seq);
+};
+
+/** Confirms those whose events are stored now; answers whether there was any. */
+const confirmSeals = async (
+  deps: Deps,
+  tx: ShopTx,
+  walk: string,
+  judged: Awaited<ReturnType<typeof judgeSeals>>,
+): Promise<boolean> => {
+  if (judged.length === 0) return false;
+  const hashes = judged.map(({ event }) => event.signed.hash);
+  const places = await placesOf(tx, walk, hashes);
+  for (const { event, carried, reason } of judged) {
+    const place = places.get(event.signed.hash);
+    if (place) await confirmSeal(deps, tx, event, place, carried, reason);
+  }
+  return places.size > 0;
 };
 
 const toQuarantined = (row: QuarantinedRow): QuarantinedEvent => ({
@@ -183,8 +220,9 @@ export const syncBatch = async (deps: Deps, tx: ShopTx, tablet: TabletCaller, ba
   const events = parseBatch(batch.events, { shop: tx.shop, walk: batch.walk });
   await lockWalk(tx, batch.walk);
   const known = await lookUp(tx, batch.walk, events);
+  const judged = await judgeSeals(deps, tx, await unansweredSeals(tx, batch, events));
   const appended = await store(deps, tx, tablet, batch, events, known);
-  const confirmed = await confirmSeals(deps, tx, batch, events);
+  const confirmed = await confirmSeals(deps, tx, batch.walk, judged);
   const accepted = appended?.accepted.length ?? 0;
   if (accepted > 0) await leaveWork(deps, tx, 'walk.stored', { walk: batch.walk, branch: appended?.branch });
   const changed = appended !== null || confirmed;

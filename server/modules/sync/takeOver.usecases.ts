@@ -98,11 +98,11 @@ export const takeOverWalk = async (
   const person = await findPerson(tx, request.person);
   const right = request.forced ? 'voidWalk' : 'walk';
   if (!person || person.state === 'left' || !hasRight(person.roles, right)) throw rightMissing(right);
+  await lockWalk(tx, request.walk);
   if (request.forced) {
     const refusal = await supervisorRefusal(deps, tx, tablet, request);
     if (refusal) return refusal;
   }
-  await lockWalk(tx, request.walk);
   const standing = await standingWalk(deps, tx, request.walk);
   if (!standing) throw walkUnknown();
   const take = request.forced ? takeByForce : takeReleased;
