@@ -1,5 +1,5 @@
 import type { Quantity } from '@shared/quantity/quantity';
-import { compareQuantities, convertQuantity, decimalsOf, subtractQuantities } from '@shared/quantity/quantity';
+import { convertQuantity, decimalsOf, subtractQuantities } from '@shared/quantity/quantity';
 import { showWindow, type Window } from '@shared/quantity/window';
 import type { ReadingEntry, Source } from '@shared/walk/events';
 import type { PullInstruction } from '@shared/walk/instruction';
@@ -96,13 +96,4 @@ export function readingFor(
     ...(moved === undefined ? {} : { moved }),
     ...(pull.mode === 'retype' ? { retype: true } : {}),
   };
-}
-
-/** A figure outside the window by about a tenth, on the side asked for. */
-export function outside(window: Window, side: 'over' | 'under'): Quantity {
-  const value = side === 'over' ? Number(window.high) * 1.1 : Number(window.low) * 0.9;
-  const found = { value: value.toFixed(1), unit: window.unit };
-  const limit = { value: side === 'over' ? window.high : window.low, unit: window.unit };
-  if (compareQuantities(found, limit) === 0) throw new Error('too narrow to miss by a tenth');
-  return found;
 }
