@@ -18,6 +18,7 @@ export const officeFrame = {
     title: 'Nothing fits',
     text: 'No row fits what is searched and chosen above.',
   },
+  map: { wide: 'Larger map', beside: 'Smaller map' },
   keys: {
     move: 'move',
     opens: 'opens',

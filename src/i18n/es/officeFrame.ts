@@ -21,6 +21,7 @@ export const officeFrame: SameKeys<typeof en> = {
     title: 'Nada coincide',
     text: 'Ninguna fila coincide con lo que se busca y elige arriba.',
   },
+  map: { wide: 'Plano más grande', beside: 'Plano más pequeño' },
   keys: {
     move: 'mover',
     opens: 'abre',
