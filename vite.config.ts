@@ -60,6 +60,7 @@ const database = {
 export default defineConfig({
   plugins: [...vuePlugins(), pwa],
   resolve: { alias },
+  define: { 'import.meta.env.VITE_VERSION': JSON.stringify(process.env.npm_package_version ?? 'development') },
   build: {
     target: 'es2022',
     rolldownOptions: { input: { app: root('./index.html'), verify: root('./verify.html') } },

@@ -24,7 +24,9 @@ const isOff = (state: WalkState, hole: string, key: string): boolean => {
 /** Whether any reading of this pass is out of its window, held or accepted. */
 export const passHasOff = (state: WalkState, pass: PassView): boolean =>
   pass.pass.order.some((hole) =>
-    pass.pass.stages.some((stage) => isOff(state, hole, slotKey({ pass: pass.id, stage: stage.id, round: pass.round }))),
+    pass.pass.stages.some((stage) =>
+      isOff(state, hole, slotKey({ pass: pass.id, stage: stage.id, round: pass.round })),
+    ),
   );
 
 /** Index of the pass under way, or −1. */

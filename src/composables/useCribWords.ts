@@ -30,7 +30,7 @@ export function useCribWords(): CribWords {
       }),
     );
   return {
-    name: (wrench) => [wrench.tag, t(`crib.kind.${wrench.kind}`), wrench.drive].filter(Boolean).join(', '),
+    name: (wrench) => [wrench.tag, t(`crib.type.${wrench.kind}`), wrench.drive].filter(Boolean).join(', '),
     facts: (wrench, at) => {
       const { range, serial } = wrench;
       const days = daysLeft(wrench, at);

@@ -1,7 +1,11 @@
 import { useI18n } from 'vue-i18n';
 
 /** Days and times as this tablet shows them. The record keeps UTC; these are words only. */
-export function useDates(): { day: (iso: string) => string; time: (iso: string) => string; moment: (iso: string) => string } {
+export function useDates(): {
+  day: (iso: string) => string;
+  time: (iso: string) => string;
+  moment: (iso: string) => string;
+} {
   const { locale } = useI18n();
   const tag = (): string => (locale.value === 'es' ? 'es' : 'en-GB');
   const shown = (iso: string, options: Intl.DateTimeFormatOptions): string =>

@@ -11,7 +11,7 @@ export const KEY_GUARD_MS = 700;
 export function useMainKey(act: () => void, isOn: () => boolean = () => true): void {
   let quietFrom = 0;
   function onKeyDown(event: KeyboardEvent): void {
-    const now = performance.now();
+    const now = event.timeStamp;
     if (event.key !== 'Enter') {
       if (event.key.length === 1) quietFrom = now + KEY_GUARD_MS;
       return;

@@ -1,9 +1,18 @@
 import { computed, ref, watch, type ComputedRef, type Ref } from 'vue';
 import type { Judged } from '@shared/walk/judgeReading';
 import type { SlipAnswer } from '@shared/walk/events';
-import { entryOf, fieldsOf, fieldVerdict, preview, readingBefore, unitOf, type PullFigures } from './pullEntry';
+import { slipOf, type Slip } from '@shared/walk/slips';
+import {
+  entryOf,
+  fieldsOf,
+  fieldVerdict,
+  preview,
+  readingBefore,
+  unitOf,
+  windowToMeet,
+  type PullFigures,
+} from './pullEntry';
 import { figureOf, type EntryContext, type EntryEffect } from './readingEntry';
-import { slipOf, type Slip } from './slipOf';
 import { useReadingEntry, type ReadingEntryUse } from './useReadingEntry';
 import { useShownUnits } from './useShownUnits';
 import type { PullFrameUse } from './usePullFrame';
@@ -11,7 +20,10 @@ import type { LogRefusal, WalkAccess } from './walkAccess';
 
 /** What is asked before the figure is recorded; one tap answers. */
 export type PullQuestion =
-  { kind: 'slip'; slip: Slip } | { kind: 'moved' } | { kind: 'another'; text: string } | { kind: 'reject' };
+  | { kind: 'slip'; slip: Slip; typed: string }
+  | { kind: 'moved' }
+  | { kind: 'another'; text: string }
+  | { kind: 'reject' };
 
 /** The entry of a pull and everything that stands between it and its event. */
 export interface PullEntryUse {
@@ -72,14 +84,8 @@ async function once({ busy, refusal }: Parts, work: () => Promise<LogRefusal | n
 function findSlip(parts: Parts, figures: PullFigures): Slip | null {
   const frame = parts.pull.frame.value;
   if (parts.slip.value || frame.instruction.mode === 'finishByStripe') return null;
-  return slipOf({
-    value: { value: figures.value, unit: unitOf(frame) },
-    verdict: (meant) =>
-      fieldVerdict(frame, 'value', meant.value) === null
-        ? 'in'
-        : preview(frame, { ...figures, value: meant.value, unit: meant.unit }).verdict,
-    before: readingBefore(frame),
-  });
+  const value = { value: figures.value, unit: unitOf(frame) };
+  return slipOf(value, windowToMeet(frame), readingBefore(frame));
 }
 
 /** Asks what has to be asked, then writes the reading. */
@@ -90,7 +96,7 @@ async function record(parts: Parts, unit?: PullFigures['unit']): Promise<void> {
   const figures = unit ? { ...read, unit } : read;
   const found = unit ? null : findSlip(parts, figures);
   if (found) {
-    question.value = { kind: 'slip', slip: found };
+    question.value = { kind: 'slip', slip: found, typed: figures.value };
     return;
   }
   const frame = pull.frame.value;
@@ -101,7 +107,7 @@ async function record(parts: Parts, unit?: PullFigures['unit']): Promise<void> {
   const { source, changedFrom } = entry.state.value;
   const data = entryOf(frame, figures, source);
   const received = source === 'keyed' ? walk.state.received?.seq : undefined;
-  const saved = await once(parts, () =>
+  await once(parts, () =>
     walk.act({
       type: 'reading.taken',
       data: {
@@ -113,7 +119,6 @@ async function record(parts: Parts, unit?: PullFigures['unit']): Promise<void> {
       },
     }),
   );
-  if (saved) pull.other.value = null;
 }
 
 async function keep(parts: Parts, text: string): Promise<void> {
@@ -142,15 +147,16 @@ function answersOf(parts: Parts) {
   const close = (): void => void (question.value = null);
   return {
     answerSlip: async (answer: SlipAnswer['answer']) => {
-      const asked = question.value?.kind === 'slip' ? question.value.slip : null;
+      const asked = question.value?.kind === 'slip' ? question.value : null;
       close();
       if (!asked) return;
-      slip.value = { kind: asked.kind, answer, ...(answer === 'corrected' ? { first: asked.typed.value } : {}) };
+      const { kind, meant } = asked.slip;
+      slip.value = { kind, answer, ...(answer === 'corrected' ? { first: asked.typed } : {}) };
       if (answer === 'asTyped') return record(parts);
       // The wrench was not reset, so what it shows is not this hole's: the true figure is typed.
-      if (!asked.meant) return entry.clear();
-      entry.replace(asked.meant.value);
-      return record(parts, asked.meant.unit);
+      if (kind === 'sameAsBefore') return entry.clear();
+      entry.replace(meant.value);
+      return record(parts, meant.unit);
     },
     answerMoved: async (answer: boolean) => {
       moved.value = answer;
@@ -191,6 +197,14 @@ function followReceived({ walk, pull, entry }: Parts): void {
   );
 }
 
+/** Answers belong to one figure at one hole: the next instruction asks anew. */
+function forgetAnswers({ pull, slip, moved }: Parts): void {
+  watch(pull.begins, () => {
+    slip.value = null;
+    moved.value = null;
+  });
+}
+
 /** The entry of one pull: figures, verdict, the questions of W6 and R12, and the one event at the end. */
 export function usePullEntry(
   walk: WalkAccess,
@@ -218,10 +232,7 @@ export function usePullEntry(
     begins: () => pull.begins.value,
   });
   const parts: Parts = { walk, pull, entry, context, ...asked };
-  watch(pull.begins, () => {
-    asked.slip.value = null;
-    asked.moved.value = null;
-  });
+  forgetAnswers(parts);
   followReceived(parts);
   const figures = computed(() => figuresOf({ entry, context }));
   return {

@@ -1,4 +1,4 @@
-import { computed, ref, type ComputedRef, type Ref } from 'vue';
+import { computed, ref, watch, type ComputedRef, type Ref } from 'vue';
 import type { HoleId } from '@shared/procedure/procedure';
 import type { PullInstruction } from '@shared/walk/instruction';
 import { sameSlot, slotKey } from '@shared/walk/slots';
@@ -29,6 +29,14 @@ export function usePullFrame(walk: WalkAccess, instruction: () => PullInstructio
     const base = { state, instruction: asked, taken: id === null ? null : (state.wrenches[id] ?? null) };
     return { ...base, other: retyped === null ? other.value : null };
   });
+  // What was said of one pull does not go on to the next: the reading named its hole and its wrench.
+  watch(
+    () => [walk.state.readings.length, walk.state.deviations.length],
+    () => {
+      other.value = null;
+      chosen.value = null;
+    },
+  );
   const begins = computed(() => {
     const { slot, mode } = instruction();
     const { readings, retype } = walk.state;

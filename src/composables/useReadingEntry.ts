@@ -41,7 +41,8 @@ const isFigureKey = (key: string): boolean => key.length === 1 && /[\p{L}\p{N}.,
 function listenForKeys(listens: () => boolean, send: (event: EntryEvent) => void): void {
   function onKeyDown(event: KeyboardEvent): void {
     if (!listens() || event.ctrlKey || event.altKey || event.metaKey || isForField(event)) return;
-    const at = performance.now();
+    // When the key was pressed, not when this page came to it: a busy page must not take a burst for a person.
+    const at = event.timeStamp;
     if (event.key === 'Enter') {
       if (isForControl(event)) return;
       if (!event.repeat) send({ type: 'enter', at });

@@ -48,7 +48,8 @@ const isSeen = ({ use }: Options, value: string): boolean =>
   use.entry.state.value.shown.value || use.context.value.verdict('value', value) === null;
 
 /** The first figure that is missing or does not read, in words; null where all are there. */
-function missing({ use, pull }: Options, t: Translate): string | null {
+function missing(options: Options, t: Translate): string | null {
+  const { use, pull } = options;
   const turn = pull.frame.value.instruction.stage.kind === 'turn';
   for (const field of use.context.value.fields) {
     const figure = figureOf(use.entry.state.value, field);
@@ -78,7 +79,10 @@ export function useRecordWords(options: Options): RecordWords {
     const unit = unitOf(pull.frame.value);
     const value = units.quantity({ value: figures.value, unit }, unit);
     const other = pull.frame.value.other;
-    const hint = other === null ? thenWords(walk, words, t) : t('walk.record.forOther', { bolt: words.bolt(holeOf(pull.frame.value)) });
+    const hint =
+      other === null
+        ? thenWords(walk, words, t)
+        : t('walk.record.forOther', { bolt: words.bolt(holeOf(pull.frame.value)) });
     const verdict = worst.value;
     if (verdict === null || verdict === 'in') return { kind: 'go', label: t('walk.record.in', { value }), hint };
     return { kind: 'ink', label: t(`walk.record.${verdict}`, { value }), hint: '' };

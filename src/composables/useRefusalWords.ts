@@ -8,11 +8,12 @@ export interface AnyRefusal {
 
 /** Says why something was not done: `errors.<code>`, else a plain sentence with the code. */
 export function useRefusalWords(): { refusalWords: (refusal: AnyRefusal) => string } {
-  const { t, te } = useI18n();
+  const i18n = useI18n();
   const refusalWords = ({ code, params = {} }: AnyRefusal): string => {
     const key = `errors.${code}`;
-    const why = typeof params.why === 'string' && te(`crib.no.${params.why}`) ? t(`crib.short.${params.why}`) : '';
-    return te(key) ? t(key, { ...params, why }) : t('errors.unknown', { code });
+    const why =
+      typeof params.why === 'string' && i18n.te(`crib.short.${params.why}`) ? i18n.t(`crib.short.${params.why}`) : '';
+    return i18n.te(key) ? i18n.t(key, { ...params, why }) : i18n.t('errors.unknown', { code });
   };
   return { refusalWords };
 }

@@ -32,11 +32,7 @@ export function wrenchByTag(offers: readonly WrenchOffer[], text: string): Wrenc
 export const serialTail = (wrench: WrenchSnapshot): string => letters(wrench.serial).slice(-3);
 
 /** Every wrench of the crib for this stage; those that suit come first, those never in service last. */
-export function useWrenchChoice(
-  walk: WalkAccess,
-  slot: () => SlotRef,
-  stage: () => Stage,
-): ComputedRef<WrenchOffer[]> {
+export function useWrenchChoice(walk: WalkAccess, slot: () => SlotRef, stage: () => Stage): ComputedRef<WrenchOffer[]> {
   return computed(() => {
     const need = needOf(walk.state, slot(), stage());
     const offers = walk.wrenches
@@ -50,6 +46,8 @@ export function useWrenchChoice(
         return { wrench, taken, objections: [...dropped, ...fit.reasons], warnings: fit.warnings };
       });
     const rank = (offer: WrenchOffer): number => Math.min(1, offer.objections.length) * 2 + (offer.taken ? 0 : 1);
-    return offers.sort((a, b) => rank(a) - rank(b) || a.wrench.tag.localeCompare(b.wrench.tag, 'en', { numeric: true }));
+    return offers.sort(
+      (a, b) => rank(a) - rank(b) || a.wrench.tag.localeCompare(b.wrench.tag, 'en', { numeric: true }),
+    );
   });
 }

@@ -164,7 +164,7 @@ export const walkPrepare = {
     you: 'signed in here',
     pullsIs: '{name} pulls.',
     now: 'Until now {pulls} pulls and {records} records.',
-    notYours: 'This walk is in the hands of {pulls} and {records}. Say who goes on.',
+    notYours: 'This walk is in the hands of {names}. Say who goes on.',
   },
   wait: {
     title: 'Let it settle',

@@ -28,10 +28,10 @@ export const walkPull = {
     },
   },
   field: {
-    degrees: 'degrees\nturned',
-    endTorque: '{unit}\nat the end',
+    degrees: 'degrees',
+    endTorque: '{unit} end',
     pulls: 'pulls',
-    wanted: 'if it shows it',
+    wanted: 'optional',
     thisPull: 'this pull',
     total: 'total since zero',
     label: { value: 'Reading', endTorque: 'Torque at the end', pulls: 'Number of pulls' },
@@ -129,7 +129,7 @@ export const walkPull = {
     number: 'Number',
     which: 'Type its number',
     take: '{bolt}: type what it showed',
-    unknown: 'I do not\nknow what it showed',
+    unknown: 'I do not know what it showed',
     unknownNote: 'Tightened instead of {bolt}; what the wrench showed is not known.',
   },
   wrong: {

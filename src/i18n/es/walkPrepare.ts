@@ -167,7 +167,7 @@ export const walkPrepare: SameKeys<typeof english> = {
     you: 'tiene la sesión aquí',
     pullsIs: 'Tira {name}.',
     now: 'Hasta ahora tira {pulls} y anota {records}.',
-    notYours: 'Este recorrido está en manos de {pulls} y {records}. Diga quién sigue.',
+    notYours: 'Este recorrido está en manos de {names}. Diga quién sigue.',
   },
   wait: {
     title: 'Déjela asentar',

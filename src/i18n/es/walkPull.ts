@@ -31,10 +31,10 @@ export const walkPull: SameKeys<typeof english> = {
     },
   },
   field: {
-    degrees: 'grados\ngirados',
-    endTorque: '{unit}\nal final',
+    degrees: 'grados',
+    endTorque: '{unit} final',
     pulls: 'tirones',
-    wanted: 'si lo marca',
+    wanted: 'opcional',
     thisPull: 'este tirón',
     total: 'total desde cero',
     label: { value: 'Lectura', endTorque: 'Par al final', pulls: 'Número de tirones' },
@@ -132,7 +132,7 @@ export const walkPull: SameKeys<typeof english> = {
     number: 'Número',
     which: 'Escriba su número',
     take: '{bolt}: escriba lo que marcó',
-    unknown: 'No sé\nqué marcó',
+    unknown: 'No sé qué marcó',
     unknownNote: 'Apretado en lugar de {bolt}; no se sabe qué marcó la llave.',
   },
   wrong: {

@@ -58,6 +58,9 @@ export const walkSettle: SameKeys<typeof english> = {
     pulled: 'Apretado {value}.',
     window: 'Ventana {window}.',
     then: 'luego {bolt}.',
+    orHold: 'Si no hay nadie: retener y terminar la pasada.',
+    here: 'Hay un supervisor aquí',
+    hereText: 'Motivo, nombre y PIN.',
     reasonIs: 'Motivo: {reason}',
     not: '{choice}: {why}.',
     pullAgain: {
@@ -124,7 +127,7 @@ export const walkSettle: SameKeys<typeof english> = {
     name: {
       pullAgain: 'Tirar otra vez',
       goOn: 'Seguir',
-      restart: 'Empezar otra vez con el mismo',
+      restart: 'Empezarlo otra vez',
       replace: 'Poner uno nuevo',
       restartJoint: 'Empezar otra vez la unión',
       accept: 'Aceptar',
@@ -138,10 +141,10 @@ export const walkSettle: SameKeys<typeof english> = {
       answered: 'Respondido',
     },
     why: {
-      pastWindow: 'ya está pasado de su ventana',
+      pastWindow: 'ya pasado de su ventana',
       endTorqueOver: 'el par al final está pasado',
       laterStageTaken: 'aquí ya se hizo una etapa posterior',
-      singleUseUsed: 'solo se puede usar una vez',
+      singleUseUsed: 'de un solo uso, y usado',
       jointRule: 'el procedimiento pide toda la unión',
       stripped: 'la rosca ya no agarra',
       noReading: 'no hay lectura que aceptar',
