@@ -1,6 +1,6 @@
 import { verifyProof } from '@shared/proof/verifyProof';
 import { writeSavedProof } from '@shared/proof/savedProof';
-import { problemSeq } from '@shared/proof/verify/problem';
+import { problemSeq, worstProblem } from '@shared/proof/verify/problem';
 import type { Locale } from '@shared/quantity/format';
 import type { PublicJwk, RecordCrypto } from '@shared/record/crypto';
 import { drawProofPdf, pdfName, type ProofStamp } from './drawProofPdf';
@@ -27,8 +27,8 @@ export async function printProof(job: PrintJob, crypto: RecordCrypto): Promise<U
   const check = await verifyProof(sealed, { crypto, shopKeys: keys, storedHashes });
   const { document, side, problems } = check;
   if (!document) return null;
-  const event = problems.map(problemSeq).find((seq) => seq !== null) ?? null;
-  const stamps: ProofStamp[] = problems.length > 0 ? [{ code: 'broken', event }, ...job.stamps] : job.stamps;
+  const worst = worstProblem(problems);
+  const stamps: ProofStamp[] = worst ? [{ code: 'broken', event: problemSeq(worst) }, ...job.stamps] : job.stamps;
   const attached = { name: pdfName(document), text: writeSavedProof({ sealed, keys }) };
   return drawProofPdf({ document, side, size, lang, stamps, attached });
 }

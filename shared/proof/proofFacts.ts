@@ -103,7 +103,7 @@ export function proofFacts(document: ProofDocument, side: SideSheet, speaker: Sp
   return [
     ...fact('fact.engine', dotted(`${family} ${model}`.trim(), serial)),
     ...fact('fact.job', job.number, true),
-    ...fact('fact.vehicle', vinText(side, speaker), true),
+    ...fact('fact.vehicle', vinText(side, speaker), side.vinHead !== undefined),
     ...fact('fact.claim', side.claim),
     ...fact('fact.joint', jointText(document, speaker)),
     ...fact('fact.walked', formatSpan(sheet.walked.from, sheet.walked.to, speaker)),

@@ -30,3 +30,22 @@ export type ProofProblem =
 
 /** The number of the event a problem is about, or null where it is about the whole. */
 export const problemSeq = (problem: ProofProblem): number | null => ('seq' in problem ? problem.seq : null);
+
+/** Told after the shop's signature: with a wrong key of the shop they would all seem forged. */
+const SECOND: ReadonlySet<ProofProblem['code']> = new Set([
+  'confirmationMissing',
+  'confirmationRefused',
+  'confirmationForged',
+]);
+
+function rankOf(problem: ProofProblem): number {
+  if (problem.code === 'chain') return problem.why === 'unknownKey' ? 2 : 0;
+  if (SECOND.has(problem.code)) return 3;
+  if (problem.code === 'shopSignature' || problem.code === 'document' || problem.code === 'notAProof') return 1;
+  return problemSeq(problem) === null ? 4 : 0;
+}
+
+/** The problem that is told first: an event that does not hold by itself, then the shop's signature, then the rest. */
+export function worstProblem(problems: readonly ProofProblem[]): ProofProblem | null {
+  return [...problems].sort((a, b) => rankOf(a) - rankOf(b))[0] ?? null;
+}

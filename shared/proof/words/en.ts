@@ -316,6 +316,10 @@ export const en = {
   'note.row': '{person}, {time}: “{text}”',
   'photos.count': '{n} photograph kept with the record|{n} photographs kept with the record',
 
+  'event.reading': 'reading, {where}',
+  'event.stage': 'done, {where}',
+  'event.signed': 'signature',
+  'event.countersigned': 'countersignature',
   'meaning.tightenedAsRecorded': 'I tightened these fasteners as recorded.',
   'meaning.recordedAsTold': 'I recorded what I was told.',
   'meaning.checkedRecord': 'I checked this record.',

@@ -316,6 +316,10 @@ export const es: Readonly<Record<PhraseKey, string>> = {
   'note.row': '{person}, {time}: «{text}»',
   'photos.count': '{n} fotografía guardada con el registro|{n} fotografías guardadas con el registro',
 
+  'event.reading': 'lectura, {where}',
+  'event.stage': 'hecho, {where}',
+  'event.signed': 'firma',
+  'event.countersigned': 'segunda firma',
   'meaning.tightenedAsRecorded': 'Apreté estos elementos como consta.',
   'meaning.recordedAsTold': 'Anoté lo que me dijeron.',
   'meaning.checkedRecord': 'Revisé este registro.',
