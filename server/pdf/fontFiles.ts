@@ -1,18 +1,17 @@
 import { createRequire } from 'node:module';
 import type { Face } from './ink';
 
-const find = createRequire(import.meta.url);
-const NEXT = '@expo-google-fonts/atkinson-hyperlegible-next';
-const MONO = '@expo-google-fonts/atkinson-hyperlegible-mono';
+const require = createRequire(import.meta.url);
 
-/** Where the full TrueType files of the faces lie (SIL OFL 1.1). */
+/** Where the full TrueType files of the faces lie (SIL OFL 1.1). Whole names, so that unused packages can be found. */
+// prettier-ignore
 export const fontFiles = (): Record<Face, string> => ({
-  text: find.resolve(`${NEXT}/400Regular/AtkinsonHyperlegibleNext_400Regular.ttf`),
-  textSemi: find.resolve(`${NEXT}/600SemiBold/AtkinsonHyperlegibleNext_600SemiBold.ttf`),
-  textBold: find.resolve(`${NEXT}/700Bold/AtkinsonHyperlegibleNext_700Bold.ttf`),
-  figures: find.resolve(`${MONO}/400Regular/AtkinsonHyperlegibleMono_400Regular.ttf`),
-  figuresSemi: find.resolve(`${MONO}/600SemiBold/AtkinsonHyperlegibleMono_600SemiBold.ttf`),
-  figuresBold: find.resolve(`${MONO}/700Bold/AtkinsonHyperlegibleMono_700Bold.ttf`),
+  text: require.resolve('@expo-google-fonts/atkinson-hyperlegible-next/400Regular/AtkinsonHyperlegibleNext_400Regular.ttf'),
+  textSemi: require.resolve('@expo-google-fonts/atkinson-hyperlegible-next/600SemiBold/AtkinsonHyperlegibleNext_600SemiBold.ttf'),
+  textBold: require.resolve('@expo-google-fonts/atkinson-hyperlegible-next/700Bold/AtkinsonHyperlegibleNext_700Bold.ttf'),
+  figures: require.resolve('@expo-google-fonts/atkinson-hyperlegible-mono/400Regular/AtkinsonHyperlegibleMono_400Regular.ttf'),
+  figuresSemi: require.resolve('@expo-google-fonts/atkinson-hyperlegible-mono/600SemiBold/AtkinsonHyperlegibleMono_600SemiBold.ttf'),
+  figuresBold: require.resolve('@expo-google-fonts/atkinson-hyperlegible-mono/700Bold/AtkinsonHyperlegibleMono_700Bold.ttf'),
 });
 
 /** What the faces lack and how it is written instead; fractions as a wrench's drive is spoken of. */
