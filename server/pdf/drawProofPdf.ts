@@ -74,7 +74,7 @@ function attach(paper: Paper, { attached, document }: PdfJob): void {
 export const pdfName = ({ number }: ProofDocument): string => `${number.replace(/[^\w-]+/g, '-')}.json`;
 
 /** Draws the pages of a proof. Blocks the thread for a moment: ask `renderProofPdf`, which does it in a thread of its own. */
-export function drawProofPdf(job: PdfJob): Promise<Uint8Array> {
+export async function drawProofPdf(job: PdfJob): Promise<Uint8Array> {
   const { document, side, lang } = job;
   const paper = paperFor(job);
   const chunks: Uint8Array[] = [];
@@ -99,5 +99,5 @@ export function drawProofPdf(job: PdfJob): Promise<Uint8Array> {
   }
   attach(paper, job);
   paper.doc.end();
-  return done;
+  return await done;
 }

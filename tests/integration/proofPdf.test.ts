@@ -149,6 +149,12 @@ describe('the bytes', () => {
     expect(first.equals(await drawProofPdf(job))).toBe(true);
   });
 
+  it('are refused with the reason where a document cannot be drawn, and the next one is drawn all the same', async () => {
+    const broken = { ...kit.document, sheet: { ...kit.document.sheet, claim: null as never } };
+    await expect(renderProofPdf(broken, { size: 'a4', lang: 'en' })).rejects.toThrow('could not be drawn');
+    expect((await render(kit)).subarray(0, 5).toString()).toBe('%PDF-');
+  });
+
   it('keep no letter that a face lacks', () => {
     const hasGlyph = (codePoint: number): boolean => codePoint < 0x250;
     expect(drawable('3⁄8 ⅜ Łukasz\u202f5 王', hasGlyph)).toBe('3[U+2044]8 3/8 Łukasz\u00a05 [U+738B]');
