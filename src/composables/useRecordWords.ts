@@ -55,7 +55,8 @@ function missing(options: Options, t: Translate): string | null {
     const figure = figureOf(use.entry.state.value, field);
     // Not judged yet: the button does not say what nobody knows.
     const unseen = field.id === 'value' && figure.ok && !isSeen(options, figure.value);
-    if (!unseen && (figure.ok || (figure.error.code === 'empty' && field.need === 'wanted'))) continue;
+    const isAsked = field.id === use.entry.state.value.active && !use.entry.complete.value;
+    if (!unseen && (figure.ok || (figure.error.code === 'empty' && field.need === 'wanted' && !isAsked))) continue;
     if (figure.ok) return t(turn ? 'walk.record.typeDegrees' : 'walk.record.typeTorque');
     if (figure.error.code !== 'empty') return problemWords(figure.error, t);
     if (field.id === 'endTorque') return t('walk.record.typeEnd');
