@@ -31,11 +31,17 @@ export function useSignedIn(): { me: ComputedRef<OfficeMe | null>; can: (right: 
   return { me: found, can: (right) => rights.value.has(right) };
 }
 
+/** Forgets all that somebody read. What says who is signed in stays: pages watch it. */
+function forget(): void {
+  const kept: readonly unknown[] = [keys.me[0], keys.doors[0]];
+  officeCache.removeQueries({ predicate: ({ queryKey }) => !kept.includes(queryKey[0]) });
+}
+
 /** Signing in forgets what somebody else had read. */
 export function useSignIn() {
   return useOfficeMutation(async (body: { email: string; password: string; shop?: string }) => {
     const found = await officeApi.call(signIn, { body });
-    officeCache.removeQueries({ predicate: ({ queryKey }) => queryKey[0] !== keys.doors[0] });
+    forget();
     useCsrf(found.csrf);
     officeCache.setQueryData(keys.me, found);
     return found;
@@ -46,8 +52,8 @@ export function useSignIn() {
 export function useSignOut() {
   return useOfficeMutation(async () => {
     await officeApi.call(signOut, {}).catch(asNobody);
-    officeCache.clear();
     officeCache.setQueryData(keys.me, null);
+    forget();
   }, []);
 }
 

@@ -22,7 +22,8 @@ export const officeCrib = {
     days: 'today | 1 day | {n} days',
     cycles: 'no cycle left | 1 cycle left | {n} cycles left',
     byDate: 'by date, {day}',
-    byCycles: 'by cycles; date {day}',
+    byCycles: 'by cycles',
+    none: 'none',
     noDue: 'no due date',
     noCertificate: 'no certificate',
     kind: {

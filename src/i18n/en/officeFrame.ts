@@ -27,7 +27,7 @@ export const officeFrame = {
   looks: {
     language: 'Language',
     theme: 'Light or dim',
-    system: 'As the system',
+    system: 'System',
     light: 'Light',
     dim: 'Dim',
   },

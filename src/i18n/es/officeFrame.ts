@@ -30,7 +30,7 @@ export const officeFrame: SameKeys<typeof en> = {
   looks: {
     language: 'Idioma',
     theme: 'Claro u oscuro',
-    system: 'Como el sistema',
+    system: 'Sistema',
     light: 'Claro',
     dim: 'Oscuro',
   },
