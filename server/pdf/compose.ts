@@ -37,14 +37,12 @@ function head(source: PageSource, stamps: Stamps): Block {
   return stacked(blocks, 8.5 * source.scale);
 }
 
-/** What was found, changed and decided: never left off page 1 (D1). */
-function findings(source: PageSource, width: number): Block {
-  const { changes } = source.document.sheet;
-  return stacked(
-    [deviationsBlock(source, width), linesBlock(source, 'sheet.changes', changes, width)],
-    7 * source.scale,
-  );
-}
+/** What was found and decided: never left off page 1 (D1). */
+const deviations = (source: PageSource, width: number): Block => deviationsBlock(source, width);
+
+/** What was voided and changed: on page 1 with the deviations. */
+const changes = (source: PageSource, width: number): Block =>
+  linesBlock(source, 'sheet.changes', source.document.sheet.changes, width);
 
 /** What is read only when somebody wants to know more. */
 function annex(source: PageSource, width: number): Block[] {
@@ -64,12 +62,20 @@ function twoColumns(source: PageSource): Block | null {
   const right = Math.min(Math.max(table.needs, Math.min(table.wishes, width * 0.5)), width * 0.56);
   if (table.needs > right) return null;
   const left = width - right - GUTTER;
-  const map = mapBlock(source, left, MAP_HEIGHT * source.scale);
-  const column = stacked([map, wrenchesBlock(source, left), findings(source, left)], 7 * source.scale);
-  return beside([
-    { x: 0, block: column },
-    { x: left + GUTTER, block: table.block(right) },
-  ]);
+  const gap = 7 * source.scale;
+  const column = [mapBlock(source, left, MAP_HEIGHT * source.scale), wrenchesBlock(source, left)];
+  // Under whichever column is shorter, so that one page holds more.
+  const arrangements = [
+    [stacked([...column, deviations(source, left), changes(source, left)], gap), table.block(right)],
+    [stacked([...column, deviations(source, left)], gap), stacked([table.block(right), changes(source, right)], gap)],
+    [stacked(column, gap), stacked([table.block(right), deviations(source, right), changes(source, right)], gap)],
+  ].map(([one, other]) =>
+    beside([
+      { x: 0, block: one ?? emptyBlock },
+      { x: left + GUTTER, block: other ?? emptyBlock },
+    ]),
+  );
+  return arrangements.reduce((best, block) => (block.height < best.height ? block : best));
 }
 
 /** Map beside wrenches, and the readings under them over the whole width. */
@@ -82,7 +88,7 @@ function overWhole(source: PageSource): Block | null {
     { x: 0, block: mapBlock(source, half, 120 * source.scale) },
     { x: half + GUTTER, block: wrenchesBlock(source, half) },
   ]);
-  return stacked([upper, table.block(width), findings(source, width)], 8 * source.scale);
+  return stacked([upper, table.block(width), deviations(source, width), changes(source, width)], 8 * source.scale);
 }
 
 function single(source: PageSource, stamps: Stamps, body: (source: PageSource) => Block | null): Placed[] | null {
@@ -119,14 +125,14 @@ interface FirstPage {
   /** Height the map may take; 0 moves it to the next page. */
   mapHeight: number;
   /** Deviations that stand on page 1; all of them but in a record that no page could hold. */
-  deviations: number;
+  told: number;
 }
 
 function firstOfMany(
   source: PageSource,
   stamps: Stamps,
   pagesAfter: number,
-  { mapHeight, deviations }: FirstPage,
+  { mapHeight, told }: FirstPage,
 ): Placed[] | null {
   const width = widthOf(source);
   const half = (width - GUTTER) / 2;
@@ -142,7 +148,7 @@ function firstOfMany(
     { x: mapHeight > 0 ? half + GUTTER : 0, block: right },
   ]);
   const { length } = source.document.sheet.deviations;
-  const shown = Math.min(deviations, length);
+  const shown = Math.min(told, length);
   const cut = length > 8 ? Math.ceil(shown / 2) : shown;
   const found =
     cut < shown
@@ -151,15 +157,14 @@ function firstOfMany(
           { x: half + GUTTER, block: deviationsBlock(source, half, cut, shown) },
         ])
       : deviationsBlock(source, width, 0, shown);
-  const changes = linesBlock(source, 'sheet.changes', source.document.sheet.changes, width);
-  return page1(source, stacked([head(source, stamps), upper, found, changes], 9 * source.scale));
+  return page1(source, stacked([head(source, stamps), upper, found, changes(source, width)], 9 * source.scale));
 }
 
 /** The pages after the first: the readings, then everything else; what page 1 could not hold comes before both. */
-function pagesAfter(source: PageSource, { mapHeight, deviations }: FirstPage): Placed[][] {
+function pagesAfter(source: PageSource, { mapHeight, told }: FirstPage): Placed[][] {
   const width = widthOf(source);
   const pages = new FlowPages(source, () => continuedBlock(source, width), MARGIN);
-  if (deviations < source.document.sheet.deviations.length) pages.add(deviationsBlock(source, width, deviations));
+  if (told < source.document.sheet.deviations.length) pages.add(deviationsBlock(source, width, told));
   if (mapHeight === 0) pages.add(mapBlock(source, width, 260));
   flowReadings(source, pages, width);
   for (const block of annex(source, width)) pages.add(block);
@@ -184,13 +189,13 @@ export function composePages(source: PageSource, stamps: Stamps): Placed[][] {
   const all = source.document.sheet.deviations.length;
   for (const scale of SCALES) {
     for (const mapHeight of MAP_HEIGHTS) {
-      const pages = many({ ...source, scale }, stamps, { mapHeight, deviations: all });
+      const pages = many({ ...source, scale }, stamps, { mapHeight, told: all });
       if (pages) return pages;
     }
   }
   const least = SCALES.at(-1) ?? 1;
-  for (let deviations = all; deviations >= 0; deviations -= 1) {
-    const pages = many({ ...source, scale: least }, stamps, { mapHeight: 0, deviations });
+  for (let told = all; told >= 0; told -= 1) {
+    const pages = many({ ...source, scale: least }, stamps, { mapHeight: 0, told });
     if (pages) return pages;
   }
   throw new Error('page 1 cannot hold even its head');

@@ -12,6 +12,7 @@ import { flange64 } from '../support/flange64';
 import { flat, judgePdf, type PdfJudge } from '../support/pdfTools';
 import { makeProofKit, sketchPlan, type ProofKit } from '../support/proofKit';
 import { testCrypto } from '../support/testSigner';
+import { testIds } from '../support/walkBook';
 
 let kit: ProofKit;
 const sideOf = async ({ sealed, shopKeys }: ProofKit) =>
@@ -69,6 +70,17 @@ describe.each([
 
   it('carries a QR code that a camera reads', () => {
     expect(page.qrCodes).toEqual([kit.document.publicUrl]);
+  });
+});
+
+describe('with somebody who recorded beside the one who pulled', () => {
+  it.each(['letter', 'a4'] as const)('three signatures stand on one page of %s', async (size) => {
+    const three = await makeProofKit(headD6, { plan: sketchPlan, setting: { records: testIds.colleague } });
+    const page = await judgePdf(await render(three, { size }));
+    expect(page.pages).toBe(1);
+    for (const name of ['Ilse Marchetti-Vane, technician', 'Bram Oyelaran, technician', 'Tobias Renquist, supervisor'])
+      expect(page.words).toContain(name);
+    for (const row of tableRows(three.document)) expect(page.text).toMatch(row);
   });
 });
 

@@ -27,8 +27,8 @@ function columnWidths(source: PageSource, texts: readonly [string, StyleName][][
       0,
       ...texts.map((row) => {
         const [text, style] = row[index] ?? ['', 'cell'];
-        const widest = index === 3 ? (text.split(' ')[0] ?? '') : text;
-        return source.paper.widthOf(widest, styleOf(source, style));
+        const parts = index === 3 ? text.split(' ') : [text];
+        return Math.max(...parts.map((part) => source.paper.widthOf(part, styleOf(source, style))));
       }),
     ),
   );

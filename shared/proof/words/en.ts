@@ -330,7 +330,7 @@ export const en = {
   'sign.tablet': '{time} · tablet {tablet}',
   'sign.office': '{time} · at the office',
   'sign.delay': 'signed offline, received {delay} later',
-  'sign.pin': 'PIN confirmed by the shop {time}',
+  'sign.pin': 'PIN confirmed {time}',
   'delay.minutes': '{n} min|{n} min',
   'delay.hours': '{n} h|{n} h',
   'delay.days': '{n} day|{n} days',

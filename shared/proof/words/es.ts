@@ -330,7 +330,7 @@ export const es: Readonly<Record<PhraseKey, string>> = {
   'sign.tablet': '{time} · tableta {tablet}',
   'sign.office': '{time} · en la oficina',
   'sign.delay': 'firmado sin conexión, recibido {delay} después',
-  'sign.pin': 'PIN confirmado por el taller {time}',
+  'sign.pin': 'PIN confirmado {time}',
   'delay.minutes': '{n} min|{n} min',
   'delay.hours': '{n} h|{n} h',
   'delay.days': '{n} día|{n} días',
