@@ -145,7 +145,11 @@ export const rooms = [
     may: ['shared', 'tests/support'],
     why: 'end-to-end tests see what a person sees: neither src nor server',
   },
-  { in: 'tests', may: ['shared', 'db', 'server', 'src', 'tests', 'eslint.config.js'], why: 'tests see all' },
+  {
+    in: 'tests',
+    may: ['shared', 'db', 'server', 'src', 'tests', 'e2e/support', 'eslint.config.js'],
+    why: 'tests see all',
+  },
   { in: 'vite.config.ts', may: [], why: 'tool configuration imports no source' },
   { in: 'drizzle.config.ts', may: [], why: 'tool configuration imports no source' },
 ];

@@ -15,13 +15,13 @@ export interface RealServer extends TestServer {
 export const errorLines = (log: string): string[] => log.split('\n').filter((line) => line.includes('"level":50'));
 
 /**
- * Starts it on a database of its own. `deps` are the test's own connection to the same database, for making shops; they
- * share nothing with the server's memory. Its clock is the real one.
+ * Starts it on a database of its own, with the built pages if asked for. `deps` are the test's own connection to the same
+ * database, for making shops; they share nothing with the server's memory. Its clock is the real one.
  */
-export const startRealServer = async (): Promise<RealServer> => {
+export const startRealServer = async ({ pages = false } = {}): Promise<RealServer> => {
   const database = await createTestDatabase();
   const APP_SECRET = randomBytes(32).toString('hex');
-  const process = await startServerProcess({ database, environment: { APP_SECRET } });
+  const process = await startServerProcess({ database, pages, environment: { APP_SECRET } });
   const config = readConfig({
     NODE_ENV: 'test',
     DATABASE_URL: database.appUrl,
