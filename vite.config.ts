@@ -60,7 +60,13 @@ const database = {
 export default defineConfig({
   plugins: [...vuePlugins(), pwa],
   resolve: { alias },
-  define: { 'import.meta.env.VITE_VERSION': JSON.stringify(process.env.npm_package_version ?? 'development') },
+  define: {
+    'import.meta.env.VITE_VERSION': JSON.stringify(process.env.npm_package_version ?? 'development'),
+    // What nobody here uses stays out of what a tablet loads.
+    __VUE_OPTIONS_API__: false,
+    __VUE_I18N_LEGACY_API__: false,
+    __INTLIFY_PROD_DEVTOOLS__: false,
+  },
   build: {
     target: 'es2022',
     rolldownOptions: { input: { app: root('./index.html'), verify: root('./verify.html') } },

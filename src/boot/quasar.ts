@@ -2,9 +2,7 @@ import { Dialog, Notify, Quasar } from 'quasar';
 import iconSet from 'quasar/icon-set/svg-material-icons';
 import english from 'quasar/lang/en-US';
 import spanish from 'quasar/lang/es';
-import 'quasar/src/css/index.sass';
-import '@/css/app.css';
-import '@/css/quasar.css';
+import './looks';
 import type { App } from 'vue';
 import type { Locale } from '@/i18n';
 

@@ -1,10 +1,11 @@
 import { createI18n, type DefineLocaleMessage } from 'vue-i18n';
-import { en } from './en';
-import { es } from './es';
 
 /** Languages of the interface. */
 export const LOCALES = ['en', 'es'] as const;
 export type Locale = (typeof LOCALES)[number];
+
+/** The words of some languages. The office's join when it is opened; its pages are checked against the whole. */
+export type Messages = Partial<Record<Locale, DefineLocaleMessage>>;
 
 /** A stored or browser language as one of ours: `es-MX` is Spanish, anything unknown English. */
 export function localeOf(wish: string | null | undefined): Locale {
@@ -12,13 +13,12 @@ export function localeOf(wish: string | null | undefined): Locale {
 }
 
 /** The words of the interface. The caller keeps the chosen locale (and writes `lang` on the page). */
-export function createWords(locale: Locale = 'en') {
+export function createWords(locale: Locale, messages: Messages) {
   return createI18n({
     legacy: false,
     locale,
     fallbackLocale: 'en',
-    // The office's words join when it is opened; its pages are checked against the whole.
-    messages: { en, es } as unknown as Record<Locale, DefineLocaleMessage>,
+    messages: messages as Record<Locale, DefineLocaleMessage>,
     missingWarn: false,
     fallbackWarn: false,
   });

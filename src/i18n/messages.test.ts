@@ -5,6 +5,7 @@ import { en as enShown } from './en';
 import { officeWords as enOffice } from './en/office';
 import { es as esShown } from './es';
 import { officeWords as esOffice } from './es/office';
+import { allMessages } from './allMessages';
 import { createWords, localeOf } from './index';
 
 type Tree = { [key: string]: string | Tree };
@@ -44,7 +45,7 @@ describe('messages', () => {
 
   it('can all be put together', () => {
     for (const locale of ['en', 'es'] as const) {
-      const words = createWords(locale);
+      const words = createWords(locale, allMessages);
       words.global.mergeLocaleMessage('en', enOffice);
       words.global.mergeLocaleMessage('es', esOffice);
       for (const [key, text] of english) {

@@ -9,6 +9,7 @@ import { openWalk } from '@/composables/openWalk';
 import { useSessionStore } from '@/stores/useSessionStore';
 import { useTabletStore } from '@/stores/useTabletStore';
 import { officeRoutes } from './officeRoutes';
+import { loadStand } from './standPages';
 import { standRoutes } from './standRoutes';
 
 /** Where a tablet that was killed inside a walk begins again: on that walk (W9). */
@@ -26,8 +27,26 @@ function guarded(to: RouteLocationNormalized): NavigationGuardReturn {
   return true;
 }
 
-/** All pages. `started` resolves when this tablet's storage was read: before that nobody knows who stands here. */
-export function createPages(started: Promise<unknown>): Router {
+let loaded = false;
+
+/** The rest of the stand, once the page that was asked for is there. A part that does not come is tried when it is needed. */
+function loadWhenIdle(): void {
+  if (loaded) return;
+  loaded = true;
+  setTimeout(() => void loadStand().catch(() => (loaded = false)), LOAD_REST_MS);
+}
+const LOAD_REST_MS = 1200;
+
+/** What the pages wait for. */
+export interface PagesOptions {
+  /** Resolves when this tablet's storage was read: before that nobody knows who stands here. */
+  started: Promise<unknown>;
+  /** Brings what only the office needs. */
+  openOffice: () => Promise<void>;
+}
+
+/** All pages. */
+export function createPages({ started, openOffice }: PagesOptions): Router {
   const router = createRouter({
     history: createWebHistory(),
     routes: [
@@ -36,9 +55,13 @@ export function createPages(started: Promise<unknown>): Router {
       { path: '/:rest(.*)*', name: 'unknown', component: () => import('@/pages/stand/NotFoundPage.vue') },
     ],
   });
+  router.afterEach((to) => {
+    if (to.path.startsWith('/stand')) loadWhenIdle();
+  });
   let first = true;
   router.beforeEach(async (to) => {
-    if (!to.path.startsWith('/office')) await started;
+    if (to.path.startsWith('/office')) await openOffice();
+    else await started;
     if (first) {
       first = false;
       const again = reopened(to);

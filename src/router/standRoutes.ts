@@ -1,5 +1,6 @@
 import type { Component } from 'vue';
 import type { RouteRecordRaw } from 'vue-router';
+import { standPages } from './standPages';
 
 declare module 'vue-router' {
   interface RouteMeta {
@@ -20,20 +21,20 @@ const page = (path: string, name: string, needs: 'nothing' | 'tablet' | 'person'
 
 /** The stand. Each page is loaded when it is opened; the service worker keeps them all for offline. */
 export const standRoutes: RouteRecordRaw[] = [
-  { path: '/', name: 'first', component: () => import('@/pages/stand/FirstPage.vue') },
+  { path: '/', name: 'first', component: standPages.first },
   {
     path: '/stand',
     component: () => import('@/layouts/StandLayout.vue'),
     children: [
       { path: '', redirect: '/stand/jobs' },
-      page('enrol', 'enrol', 'nothing', () => import('@/pages/stand/EnrolPage.vue')),
-      page('sign-in', 'sign-in', 'tablet', () => import('@/pages/stand/SignInPage.vue')),
-      page('jobs', 'jobs', 'person', () => import('@/pages/stand/JobsPage.vue')),
-      page('jobs/:job', 'job', 'person', () => import('@/pages/stand/JobPage.vue')),
-      page('jobs/:job/joints/:joint', 'joint', 'person', () => import('@/pages/stand/JointPage.vue')),
-      page('walks/:walk', 'walk', 'person', () => import('@/pages/stand/WalkPage.vue')),
-      page('tablet', 'tablet', 'tablet', () => import('@/pages/stand/TabletPage.vue')),
-      page('settings', 'settings', 'nothing', () => import('@/pages/stand/SettingsPage.vue')),
+      page('enrol', 'enrol', 'nothing', standPages.enrol),
+      page('sign-in', 'sign-in', 'tablet', standPages.signIn),
+      page('jobs', 'jobs', 'person', standPages.jobs),
+      page('jobs/:job', 'job', 'person', standPages.job),
+      page('jobs/:job/joints/:joint', 'joint', 'person', standPages.joint),
+      page('walks/:walk', 'walk', 'person', standPages.walk),
+      page('tablet', 'tablet', 'tablet', standPages.tablet),
+      page('settings', 'settings', 'nothing', standPages.settings),
     ],
   },
 ];

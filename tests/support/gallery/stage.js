@@ -4,6 +4,7 @@ import { installQuasar } from '@/boot/quasar';
 import { applyTheme } from '@/boot/theme';
 import { useStandSettings } from '@/composables/useStandSettings';
 import { createWords, localeOf } from '@/i18n';
+import { allMessages } from '@/i18n/allMessages';
 import { view } from '@shared/walk/view';
 import { demoProcedures } from '../../../db/seed/procedures';
 import { brindleWrenches } from '../../../db/seed/wrenches';
@@ -147,4 +148,4 @@ const access = {
 const tray = { waiting: Number(asked.get('waiting') ?? '31'), refused: 0, open: () => undefined };
 const app = createApp({ render: () => h(App, { walk: access, tray }) });
 installQuasar(app, locale);
-app.use(createWords(locale)).mount('#app');
+app.use(createWords(locale, allMessages)).mount('#app');

@@ -2,6 +2,7 @@ import { mount, type VueWrapper } from '@vue/test-utils';
 import { Quasar } from 'quasar';
 import type { Component } from 'vue';
 import { createWords, type Locale } from '@/i18n';
+import { allMessages } from '@/i18n/allMessages';
 
 /** A mounted part: its props may be changed by name. */
 export type MountedPart = VueWrapper & { setProps: (props: Record<string, unknown>) => Promise<void> };
@@ -11,6 +12,6 @@ export function mountPart(part: Component, props: Record<string, unknown> = {}, 
   return mount(part, {
     props,
     attachTo: document.body,
-    global: { plugins: [createWords(locale), [Quasar, {}]] },
+    global: { plugins: [createWords(locale, allMessages), [Quasar, {}]] },
   }) as MountedPart;
 }
