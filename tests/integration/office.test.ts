@@ -238,6 +238,26 @@ describe('sealed PINs (decision 6)', () => {
     expect(confirmations.at(-1)).toMatchObject({ result: 'refused', reason: 'pin.disowned' });
     expect(codeOf(await act(walk, 'proof', {}, clerk))).toEqual([409, 'proof.blocked']);
   });
+
+  it('of a countersigner are renewed by countersigning again, and only then (decision 6)', async () => {
+    const walk = await walked(tablet, {}, place);
+    bodyOf<Receipt>(await walk.send());
+    const again = async () => {
+      const { head } = (await whole(walk)).walk;
+      return act(walk, 'countersign', { head, pin, meaning: 'checkedRecord' });
+    };
+    expect(codeOf(await again())).toEqual([409, 'signedAlready']);
+    const list = bodyOf<{ uses: { id: string; walk: string }[] }>(await supervisor.get('/api/pin-uses'));
+    const use = list.uses.find((one) => one.walk === walk.id);
+    expect((await supervisor.send('POST', `/api/pin-uses/${use?.id}/disown`)).status).toBe(200);
+    expect(bodyOf<OfficeWalk>(await again())).toMatchObject({ state: 'finished', refusedSeals: 0 });
+    const { issueBlocks, events } = await whole(walk);
+    expect(issueBlocks).toEqual([]);
+    const [first, second] = events
+      .map(({ text }) => JSON.parse(text) as { type: string; seq: number; data: { renews?: number } })
+      .filter(({ type }) => type === 'walk.countersigned');
+    expect(second?.data.renews).toBe(first?.seq);
+  });
 });
 
 describe('orders', () => {

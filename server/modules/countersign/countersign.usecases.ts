@@ -55,7 +55,7 @@ const signInto = async (
   caller: OfficeCaller,
   request: Signing,
   meaning: string,
-  body: (seal: string) => EventBody,
+  body: (seal: string, standing: StandingWalk) => EventBody,
 ): Promise<OfficeWalk | AppError> => {
   const standing = await lockedWalk(deps, tx, request.walk);
   demandOffice(standing, request.head);
@@ -64,23 +64,29 @@ const signInto = async (
   const by = caller.person.id;
   const pinVersion = (await findPerson(tx, by))?.pinVersion ?? 0;
   const seal = await officeSeal(deps, tx, standing, { person: by, pin: request.pin, pinVersion, meaning });
-  const event = body(seal);
+  const event = body(seal, standing);
   await writeOfficeEvent(deps, tx, { standing, by, body: event });
   await writeAudit(deps, tx, { person: by, action: event.type, subject: request.walk });
   return officeWalk(tx, request.walk);
 };
 
-/** Countersigns a released walk (W12). */
+/** The countersignature that stands and whose PIN was refused or disowned: the next one renews it (decision 6). */
+const refusedCountersign = ({ state, seals }: StandingWalk): number | undefined =>
+  state.signatures.find(({ seq, role, stands }) => role === 'countersigner' && stands && seals.refused.includes(seq))
+    ?.seq;
+
+/** Countersigns a released walk (W12), or does so again where the PIN of the first time does not count. */
 export const countersignWalk = (
   deps: Deps,
   tx: ShopTx,
   caller: OfficeCaller,
   request: Signing & { meaning: Meaning },
 ): Promise<OfficeWalk | AppError> =>
-  signInto(deps, tx, caller, request, request.meaning, (seal) => ({
-    type: 'walk.countersigned',
-    data: { meaning: request.meaning, seal },
-  }));
+  signInto(deps, tx, caller, request, request.meaning, (seal, standing) => {
+    const renews = refusedCountersign(standing);
+    const data = { meaning: request.meaning, seal, ...(renews === undefined ? {} : { renews }) };
+    return { type: 'walk.countersigned', data };
+  });
 
 /** Sends a released walk back, hole by hole (R11). A tablet then takes it over again. */
 export const sendBackWalk = (
