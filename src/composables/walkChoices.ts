@@ -34,11 +34,25 @@ function isOwn({ state }: WalkRecord, person: string): boolean {
   return hands.includes(person) && !state.opened?.policy.shopOfOne;
 }
 
-function officeChoices(whole: OfficeWalkWhole, can: (right: Right) => boolean, own: boolean): WalkChoice[] {
-  const { state } = whole.walk;
+/** A countersignature whose PIN was refused or called not theirs is made anew, by the same person or another. */
+const needsAnew = ({ state, seals }: WalkRecord): boolean =>
+  state.signatures.some(
+    ({ seq, role, stands }) =>
+      role === 'countersigner' &&
+      stands &&
+      seals.some((seal) => seal.seq === seq && seal.confirmation?.result === 'refused'),
+  );
+
+function officeChoices(
+  { walk: { state } }: OfficeWalkWhole,
+  record: WalkRecord,
+  can: (right: Right) => boolean,
+  own: boolean,
+): WalkChoice[] {
   const signed = state === 'signed' || state === 'finished';
+  const waits = state === 'signed' || (state === 'finished' && needsAnew(record));
   return [
-    ...(state === 'signed' && can('countersign') && !own ? [{ kind: 'countersign' } as const] : []),
+    ...(waits && can('countersign') && !own ? [{ kind: 'countersign' } as const] : []),
     ...(signed && can('sendBack') && !own ? [{ kind: 'sendBack' } as const] : []),
     ...(can('voidWalk') ? [{ kind: 'voidWalk' } as const] : []),
   ];
@@ -77,6 +91,6 @@ export function walkChoices(
   if (whole.walk.forked) return none('forked');
   const own = isOwn(record, person.id);
   const byOffice = whole.walk.writer === 'office';
-  const choices = byOffice ? officeChoices(whole, can, own) : tabletChoices(record, can, own);
+  const choices = byOffice ? officeChoices(whole, record, can, own) : tabletChoices(record, can, own);
   return { choices, why: own ? 'ownReadings' : null };
 }

@@ -132,6 +132,21 @@ describe('walkChoices', () => {
     });
   });
 
+  it('asks for a countersignature anew whose PIN was refused (decision 6)', async () => {
+    const walk = signedWalk().as('boss', 'supervisor');
+    walk.does('walk.countersigned', { meaning: 'checkedRecord', seal: 'b'.repeat(64) }, 'office');
+    const whole = await wholeOf(walk, { state: 'finished', writer: 'office' });
+    const seq = whole.events.length - 1;
+    const kinds = (result: 'accepted' | 'refused') => {
+      const said = { seq, hash: whole.events[seq]?.hash, at: '2026-05-02T08:00:00Z', result };
+      const now = { ...whole, confirmations: [said as OfficeWalkWhole['confirmations'][number]] };
+      const record = walkRecord(now);
+      return record && walkChoices(now, record, boss).choices.map(({ kind }) => kind);
+    };
+    expect(kinds('refused')).toEqual(['countersign', 'sendBack', 'voidWalk']);
+    expect(kinds('accepted')).toEqual(['sendBack', 'voidWalk']);
+  });
+
   it('offers no judgement to whoever took readings (P1)', async () => {
     const own = { id: TECH, roles: ['supervisor' as const] };
     const found = await choose(signedWalk(), { state: 'signed', writer: 'office' }, own);
