@@ -84,7 +84,7 @@ function jobOf(shop: string, line: JobLine): SeedJob {
     number: line.number,
     customer: line.customer,
     family: line.engine.split(' ')[0] ?? '',
-    model: line.engine,
+    model: line.engine.split(' ').slice(1).join(' '),
     serial: line.serial,
     vin: line.vin ?? '',
     claim: line.claim ?? '',
