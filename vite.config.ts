@@ -47,7 +47,7 @@ const pwa = VitePWA({
 
 const nodeProject = (name: string, include: string[], more: object = {}) => ({
   resolve: { alias },
-  test: { name, environment: 'node', include, exclude: [...configDefaults.exclude], ...more },
+  test: { name, environment: 'node', testTimeout: 30_000, include, exclude: [...configDefaults.exclude], ...more },
 });
 
 /** Tests on a real database: one migrated template, a clone for each file. */
@@ -85,7 +85,7 @@ export default defineConfig({
       {
         plugins: vuePlugins(),
         resolve: { alias },
-        test: { name: 'component', environment: 'happy-dom', include: ['src/**/*.test.ts'] },
+        test: { name: 'component', environment: 'happy-dom', testTimeout: 30_000, include: ['src/**/*.test.ts'] },
       },
       nodeProject('handbook', ['tests/handbook/**/*.test.ts'], { testTimeout: 30_000 }),
       nodeProject('integration', ['tests/{integration,migrations}/**/*.test.ts'], database),

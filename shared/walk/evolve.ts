@@ -106,7 +106,7 @@ function evolveReadings(state: WalkState, event: WalkEvent): WalkState | null {
     case 'reading.received':
       return readingReceived(state, event, event.data);
     case 'reading.rejected':
-      return readingRejected(state, event, event.data.reason);
+      return readingRejected(state, event, event.data.reason, slotNow(state));
     case 'reading.taken':
       return readingTaken(state, event, event.data);
     case 'reading.voided':

@@ -297,6 +297,15 @@ describe('R10 typing errors', () => {
     expect(walk.state.readings[0]?.status).toBe('voided');
   });
 
+  it('shows a rejected value first only where it was out of its window', () => {
+    const rejected = (value: string): string[] => {
+      const walk = aWalk().does('reading.received', { wrench: 'w3', source: 'keyed', value: { value, unit: 'N.m' } });
+      return walk.does('reading.rejected', { received: walk.state.seq, reason: 'not this bolt' }).kinds();
+    };
+    expect(rejected('20')).toEqual([]);
+    expect(rejected('25')).toEqual(['rejectedOutOfWindow']);
+  });
+
   it('is for typed readings only', () => {
     const walk = aWalk().pulls('20', { source: 'keyed' });
     expect(walk.tries('reading.voided', { reading: walk.state.seq, reason: 'r' })?.code).toBe('receivedByWrench');

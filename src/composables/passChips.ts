@@ -28,6 +28,3 @@ export const passHasOff = (state: WalkState, pass: PassView): boolean =>
       isOff(state, hole, slotKey({ pass: pass.id, stage: stage.id, round: pass.round })),
     ),
   );
-
-/** Index of the pass under way, or −1. */
-export const passNowOf = (view: WalkView): number => view.passNow ?? -1;

@@ -10,7 +10,9 @@ import type {
   WrenchTaken,
 } from '../events';
 import { stepKey, stockOf } from '../route';
-import { slotKey } from '../slots';
+import { slotKey, stageOf, windowOf } from '../slots';
+import { unitKind } from '../../quantity/unit';
+import { place } from '../../quantity/window';
 import type { WalkState } from '../state';
 import type { SlotRef } from '../events';
 import { withDeviation, withDeviations } from './change';
@@ -104,17 +106,21 @@ export const readingReceived = (state: WalkState, event: EventContext, data: Rea
   received: { ...data, seq: event.seq },
 });
 
-/** `reading.rejected`. */
-export function readingRejected(state: WalkState, event: EventContext, reason: string): WalkState {
-  const slot = state.begun;
+/** `reading.rejected`: one that was not in its window is shown first (R10); any other stays in the chain alone. */
+export function readingRejected(
+  state: WalkState,
+  event: EventContext,
+  reason: string,
+  slot: SlotRef | null,
+): WalkState {
+  const sent = state.received?.value;
+  const stage = slot && stageOf(state, slot)?.stage;
+  const window = slot && stage ? windowOf(state.procedure, stage, slot.hole) : null;
   const next: WalkState = { ...state, received: null };
-  return withDeviation(next, event, {
-    kind: 'rejectedOutOfWindow',
-    status: 'noted',
-    note: reason,
-    slot,
-    hole: slot?.hole ?? null,
-  });
+  const inside = sent && window && unitKind(sent.unit) === unitKind(window.unit) && place(sent, window) === 'in';
+  if (inside) return next;
+  const about = { slot, hole: slot?.hole ?? null, status: 'noted' as const, note: reason };
+  return withDeviation(next, event, { ...about, kind: 'rejectedOutOfWindow' });
 }
 
 /** `wait.skipped` (W8). */
