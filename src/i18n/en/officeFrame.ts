@@ -2,12 +2,10 @@
 export const officeFrame = {
   skip: 'Skip to the page',
   sortBy: 'Sort by this column',
-  optional: 'optional',
   none: 'none',
   any: 'any',
   change: 'Change',
   show: 'Show',
-  copy: 'Copy',
   copied: 'Copied',
   print: 'Print',
   clearFilters: 'Clear search and filters',

@@ -2,7 +2,7 @@
 export const officeProofs = {
   proofs: {
     title: 'Proofs',
-    lead: '{n} walks are finished and not issued yet. | One walk is finished and not issued yet. | {n} walks are finished and not issued yet.',
+    lead: 'Nothing waits to be issued. | One walk is finished and not issued yet. | {n} walks are finished and not issued yet.',
     find: 'Engine serial, VIN or its last six, job, claim, proof number',
     number: 'proof',
     vehicle: 'vehicle',
@@ -11,7 +11,6 @@ export const officeProofs = {
     claim: 'claim {claim}',
     issueNumber: 'issue {n}',
     ready: 'Ready to issue',
-    stateIs: 'Proofs',
     empty: {
       title: 'No proof yet',
       text: 'When a walk is signed and countersigned it appears here, ready to be issued.',
@@ -20,7 +19,6 @@ export const officeProofs = {
       title: 'No proof fits',
       text: 'Searched are engine serial, VIN (whole, or any part of it), job, claim, customer and proof number.',
     },
-    readyHere: 'No proof was issued for it yet; these finished walks fit:',
   },
   proof: {
     one: 'Proof',
@@ -57,8 +55,6 @@ export const officeProofs = {
     revokeGo: 'Revoke for good',
     reason: 'Reason, as everybody will read it',
     toWalk: 'The walk',
-    toJob: 'The job',
-    sheet: 'What it says',
     deviations: 'Deviations',
     readings: 'Readings',
     fingerprint: 'Fingerprint',

@@ -5,12 +5,10 @@ import type { SameKeys } from '../sameKeys';
 export const officeFrame: SameKeys<typeof en> = {
   skip: 'Saltar a la página',
   sortBy: 'Ordenar por esta columna',
-  optional: 'opcional',
   none: 'ninguno',
   any: 'cualquiera',
   change: 'Cambiar',
   show: 'Mostrar',
-  copy: 'Copiar',
   copied: 'Copiado',
   print: 'Imprimir',
   clearFilters: 'Quitar búsqueda y filtros',

@@ -5,7 +5,7 @@ import type { SameKeys } from '../sameKeys';
 export const officeProofs: SameKeys<typeof en> = {
   proofs: {
     title: 'Pruebas',
-    lead: '{n} recorridos están terminados y sin emitir. | Un recorrido está terminado y sin emitir. | {n} recorridos están terminados y sin emitir.',
+    lead: 'Nada espera su emisión. | Un recorrido está terminado y sin emitir. | {n} recorridos están terminados y sin emitir.',
     find: 'Serie del motor, VIN o sus seis últimos, trabajo, reclamación, prueba',
     number: 'prueba',
     vehicle: 'vehículo',
@@ -14,7 +14,6 @@ export const officeProofs: SameKeys<typeof en> = {
     claim: 'reclamación {claim}',
     issueNumber: 'emisión {n}',
     ready: 'Listas para emitir',
-    stateIs: 'Pruebas',
     empty: {
       title: 'Todavía no hay pruebas',
       text: 'Cuando un recorrido tiene las dos firmas aparece aquí, listo para emitir.',
@@ -23,7 +22,6 @@ export const officeProofs: SameKeys<typeof en> = {
       title: 'Ninguna prueba coincide',
       text: 'Se busca en serie del motor, VIN (entero o una parte), trabajo, reclamación, cliente y número de prueba.',
     },
-    readyHere: 'Aún no se ha emitido ninguna; coinciden estos recorridos terminados:',
   },
   proof: {
     one: 'Prueba',
@@ -60,8 +58,6 @@ export const officeProofs: SameKeys<typeof en> = {
     revokeGo: 'Revocar para siempre',
     reason: 'Motivo, tal como lo leerá cualquiera',
     toWalk: 'El recorrido',
-    toJob: 'El trabajo',
-    sheet: 'Lo que dice',
     deviations: 'Desviaciones',
     readings: 'Lecturas',
     fingerprint: 'Huella',
