@@ -60,13 +60,21 @@ export class StandTablet {
     await this.page.waitForURL(/\/stand\/walks\//);
   }
 
+  /** Writes into a field; by keys it has the focus already, and Enter goes on. */
+  private async fill(testId: string, text: string): Promise<void> {
+    if (!this.byKeys) return this.id(testId).fill(text);
+    await expect(this.id(testId)).toBeFocused();
+    await this.page.keyboard.type(text, { delay: 60 });
+    await this.page.keyboard.press('Enter');
+  }
+
   /** New parts at the stand: number, batch, count. */
   async takePart(number: string, batch: string, count: string): Promise<void> {
-    await this.id('part-number').fill(number);
-    await this.id('part-batch').fill(batch);
-    await this.id('part-count').fill(count);
+    await this.fill('part-number', number);
+    await this.fill('part-batch', batch);
     const before = await this.heading();
-    await this.id('part-count').press('Enter');
+    await this.fill('part-count', count);
+    if (!this.byKeys) await this.id('part-count').press('Enter');
     await expect.poll(() => this.heading(), { timeout: 8_000 }).not.toBe(before);
   }
 
@@ -83,10 +91,14 @@ export class StandTablet {
 
   /** Takes a wrench: tag typed, last three of its serial confirmed, everything on it looked at (W3). */
   async takeWrench(tag: string, lastThree: string): Promise<void> {
-    await this.id('wrench-tag').fill(tag);
-    await this.id('wrench-tag').press('Enter');
-    await this.type(lastThree);
-    await this.press('wrench-serial-ok');
+    await this.fill('wrench-tag', tag);
+    if (!this.byKeys) await this.id('wrench-tag').press('Enter');
+    await this.id('wrench-serial').waitFor();
+    if (this.byKeys) await this.fill('wrench-serial', lastThree);
+    else {
+      await this.type(lastThree);
+      await this.press('wrench-serial-ok');
+    }
     await this.tickAll();
     await this.press('wrench-take');
     if (await this.sees('choice-thisPull')) await this.choose('thisPull');
@@ -127,9 +139,20 @@ export class StandTablet {
 
   /** An answer where one tap is enough. */
   async choose(name: string): Promise<void> {
-    await this.id(`choice-${name}`).waitFor();
+    const choice = this.id(`choice-${name}`);
+    await choice.waitFor();
+    if (this.byKeys) return this.chooseNumber(((await choice.innerText()).match(/^\d/) ?? ['1'])[0]);
+    // Taps in the first moment belong to the screen before.
     await this.page.waitForTimeout(400);
-    await this.id(`choice-${name}`).click();
+    await choice.click();
+  }
+
+  /** A digit marks an answer, and Enter gives it once a wrench acting as keyboard could not have meant it. */
+  async chooseNumber(digit: string): Promise<void> {
+    await this.page.waitForTimeout(PACE_MS);
+    await this.page.keyboard.press(digit);
+    await this.page.waitForTimeout(PACE_MS + 60);
+    await this.page.keyboard.press('Enter');
   }
 
   /** Types a figure without recording it. */
@@ -160,6 +183,11 @@ export class StandTablet {
   /** Ticks every line of the screen. */
   async tickAll(): Promise<void> {
     await this.page.locator('[data-testid^=tick-]').first().waitFor();
+    if (this.byKeys) {
+      const lines = await this.page.locator('[data-testid^=tick-]').count();
+      for (let line = 1; line <= lines; line += 1) await this.page.keyboard.press(String(line), { delay: 40 });
+      return;
+    }
     for (const tick of await this.page.locator('[data-testid^=tick-]').all()) await tick.click();
   }
 
@@ -173,7 +201,7 @@ export class StandTablet {
 
   /** *Correct bolt …*: voids the last figure for the first usual reason and types it again (R10). */
   async correct(figure: string): Promise<void> {
-    await this.id('correct').click();
+    await this.open('correct');
     await this.choose('reason-1');
     await expect(this.id('instruction')).toContainText(/do not pull/i);
     await this.record(figure);
@@ -181,8 +209,14 @@ export class StandTablet {
 
   /** Puts in a new bolt where one is off: loosen, take out, look, prepare, fit (R2). */
   async replaceBolt(): Promise<void> {
-    await this.page.getByRole('button', { name: /put in a new bolt/i }).click();
-    await this.press('record');
+    await this.page.getByRole('button', { name: /put in a new bolt/i }).waitFor();
+    if (this.byKeys) {
+      await this.chooseNumber('1');
+      await this.settled();
+    } else {
+      await this.page.getByRole('button', { name: /put in a new bolt/i }).click();
+      await this.press('record');
+    }
     await this.press('record');
     await this.tickAll();
     await this.press('record');
@@ -193,17 +227,21 @@ export class StandTablet {
   /** A turn with its end torque and one pull, field by field. */
   async recordTurn(degrees: string, endTorque: string): Promise<void> {
     const fields = this.page.locator('.reading-box__field');
+    const next = async (field: number): Promise<void> => {
+      if (this.byKeys) await this.page.keyboard.press('Enter');
+      else await fields.nth(field).click();
+    };
     await this.type(degrees);
-    await fields.nth(1).click();
+    await next(1);
     await this.type(endTorque);
-    await fields.nth(2).click();
+    await next(2);
     await this.type('1');
     await this.press('record');
   }
 
   /** Signs what was walked. */
   async sign(meaning: string, pin: string): Promise<void> {
-    await this.id('sign').click();
+    await this.open('sign');
     await this.choose(meaning);
     await this.pinOf(null, pin);
     await this.id('countersign').waitFor();
@@ -211,10 +249,17 @@ export class StandTablet {
 
   /** Countersigns on this tablet, as somebody else. */
   async countersign(meaning: string, name: string, pin: string): Promise<void> {
-    await this.id('countersign').click();
+    await this.open('countersign');
     await this.choose(meaning);
     await this.pinOf(name, pin);
     await this.id('leave').waitFor();
+  }
+
+  /** A button that is not the screen's main one: by tap, or reached by Tab and pressed by Enter. */
+  private async open(testId: string): Promise<void> {
+    if (!this.byKeys) return this.id(testId).click();
+    await this.id(testId).focus();
+    await this.page.keyboard.press('Enter');
   }
 
   private async pinOf(name: string | null, pin: string): Promise<void> {
@@ -223,7 +268,8 @@ export class StandTablet {
       await who.waitFor();
       // Taps in the first moment belong to the screen before.
       await this.page.waitForTimeout(400);
-      await who.click();
+      if (this.byKeys) await this.chooseNumber(((await who.innerText()).match(/^\d/) ?? ['1'])[0]);
+      else await who.click();
     }
     await this.page
       .getByText(/of six digits/i)
