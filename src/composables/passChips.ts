@@ -1,4 +1,4 @@
-import type { PassView, WalkView } from '@shared/walk/view';
+import type { PassView } from '@shared/walk/view';
 import { slotDone } from '@shared/walk/route';
 import { slotKey } from '@shared/walk/slots';
 import type { WalkState } from '@shared/walk/state';

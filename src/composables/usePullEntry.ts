@@ -45,6 +45,15 @@ export interface PullEntryUse {
   reject: (reason: string) => Promise<void>;
 }
 
+/** What the screen says about the entry. */
+export interface PullEntryOptions {
+  listens: () => boolean;
+  /** *Record by itself* is on for this walk. */
+  recordsItself: () => boolean;
+  /** The wrench is at its limit: what it gave is recorded, then it is put aside here and another takes the rest (W9). */
+  atLimit: () => boolean;
+}
+
 interface Parts {
   walk: WalkAccess;
   pull: PullFrameUse;
@@ -55,6 +64,7 @@ interface Parts {
   busy: Ref<boolean>;
   slip: Ref<SlipAnswer | null>;
   moved: Ref<boolean | null>;
+  atLimit: () => boolean;
 }
 
 function figuresOf({ entry, context }: Pick<Parts, 'entry' | 'context'>): PullFigures | null {
@@ -107,7 +117,8 @@ async function record(parts: Parts, unit?: PullFigures['unit']): Promise<void> {
   const { source, changedFrom } = entry.state.value;
   const data = entryOf(frame, figures, source);
   const received = source === 'keyed' ? walk.state.received?.seq : undefined;
-  await once(parts, () =>
+  const spent = parts.atLimit() ? frame.taken?.wrench.id : undefined;
+  const saved = await once(parts, () =>
     walk.act({
       type: 'reading.taken',
       data: {
@@ -119,6 +130,9 @@ async function record(parts: Parts, unit?: PullFigures['unit']): Promise<void> {
       },
     }),
   );
+  if (saved && spent !== undefined) {
+    await once(parts, () => walk.act({ type: 'wrench.reported', data: { wrench: spent, what: 'reachedLimit' } }));
+  }
 }
 
 async function keep(parts: Parts, text: string): Promise<void> {
@@ -206,11 +220,7 @@ function forgetAnswers({ pull, slip, moved }: Parts): void {
 }
 
 /** The entry of one pull: figures, verdict, the questions of W6 and R12, and the one event at the end. */
-export function usePullEntry(
-  walk: WalkAccess,
-  pull: PullFrameUse,
-  options: { listens: () => boolean; recordsItself: () => boolean },
-): PullEntryUse {
+export function usePullEntry(walk: WalkAccess, pull: PullFrameUse, options: PullEntryOptions): PullEntryUse {
   const units = useShownUnits();
   const receivedFirst = ref(false);
   const asked = {
@@ -231,7 +241,7 @@ export function usePullEntry(
     onEffect: (effect) => onEffect(parts, receivedFirst, effect),
     begins: () => pull.begins.value,
   });
-  const parts: Parts = { walk, pull, entry, context, ...asked };
+  const parts: Parts = { walk, pull, entry, context, atLimit: options.atLimit, ...asked };
   forgetAnswers(parts);
   followReceived(parts);
   const figures = computed(() => figuresOf({ entry, context }));

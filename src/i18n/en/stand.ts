@@ -129,6 +129,18 @@ export const stand = {
     failedKept: 'Nothing was lost: what was saved is on this tablet.',
     failedTodo: 'Try again. If it stays, export what is readable.',
     orderWaits: 'An order from the office waits: {what}',
+    order: {
+      stop: 'stop',
+      goOn: 'go on',
+      void: 'void this walk',
+      withdraw: 'the procedure was withdrawn',
+      decide: 'a decision',
+      skipWait: 'shorten the wait',
+      branch: 'which record stands',
+      release: 'hand it to the shop',
+    },
+    pinRefused: 'The PIN of {name} was not accepted',
+    pinRefusedText: 'The proof waits until it is signed again: ask in the office.',
   },
   tablet: {
     title: 'What’s on this tablet',

@@ -114,6 +114,7 @@ export const walkPrepare = {
     titleForced: 'Look at the work: another tablet wrote here',
     how: 'How does {bolt} go on?',
     last: 'Last recorded: {bolt}, {value}, at {time}.',
+    received: 'The wrench sent {value}. It is kept and waits to be recorded.',
     nothingYet: 'No reading was recorded yet.',
     now: 'Now: pass {pass} of {all}, {stage}, {bolt}',
     between: 'Between two pulls: nothing is under way at a fastener.',
@@ -157,6 +158,8 @@ export const walkPrepare = {
     hands: 'Somebody else takes over',
     jobs: 'To the jobs',
     goOn: 'Go on',
+    void: 'Void this walk',
+    voidText: 'Everything is kept. A supervisor voids it; the joint stays open.',
   },
   hands: {
     pulls: 'Who pulls?',

@@ -6,7 +6,6 @@ export const walkPull = {
     round: 'round {n}',
     done: '{n} {what} done',
     toGo: '{n} to go',
-    stages: 'pulls',
   },
   target: {
     turn: 'Turn {bolt}',

@@ -32,6 +32,13 @@ export const walkReview = {
     toOffice: 'Leave it to\nthe office',
     release: 'Hand it to the shop',
   },
+  amend: {
+    button: 'A part or a measure is wrong',
+    title: 'What was entered wrongly?',
+    text: 'Nothing is done again at the joint: only what was written down is put right.',
+    both: 'Both entries stay on record.',
+    save: 'Correct it',
+  },
   fact: {
     fastPass: '{count} readings in {seconds} s in {pass}',
     pickedWrench: '{wrench} was picked from the list, not scanned',

@@ -132,6 +132,18 @@ export const stand: SameKeys<typeof english> = {
     failedKept: 'No se ha perdido nada: lo guardado está en la tableta.',
     failedTodo: 'Inténtelo otra vez. Si sigue, exporte lo legible.',
     orderWaits: 'Espera una orden de la oficina: {what}',
+    order: {
+      stop: 'parar',
+      goOn: 'seguir',
+      void: 'anular este recorrido',
+      withdraw: 'se retiró el procedimiento',
+      decide: 'una decisión',
+      skipWait: 'acortar la espera',
+      branch: 'qué registro vale',
+      release: 'entregarlo al taller',
+    },
+    pinRefused: 'No se aceptó el PIN de {name}',
+    pinRefusedText: 'El certificado espera a que se firme otra vez: pregunte en la oficina.',
   },
   tablet: {
     title: 'Qué hay en esta tableta',

@@ -117,6 +117,7 @@ export const walkPrepare: SameKeys<typeof english> = {
     titleForced: 'Mire el trabajo: aquí escribía otra tableta',
     how: '¿Cómo sigue {bolt}?',
     last: 'Lo último anotado: {bolt}, {value}, a las {time}.',
+    received: 'La llave envió {value}. Está guardado y espera a ser anotado.',
     nothingYet: 'Aún no se ha anotado ninguna lectura.',
     now: 'Ahora: pasada {pass} de {all}, {stage}, {bolt}',
     between: 'Entre dos tirones: no hay nada a medias.',
@@ -160,6 +161,8 @@ export const walkPrepare: SameKeys<typeof english> = {
     hands: 'Sigue otra persona',
     jobs: 'A los trabajos',
     goOn: 'Seguir',
+    void: 'Anular este recorrido',
+    voidText: 'Se conserva todo. Lo anula un supervisor; la unión queda abierta.',
   },
   hands: {
     pulls: '¿Quién tira?',

@@ -9,7 +9,6 @@ export const walkPull: SameKeys<typeof english> = {
     round: 'ronda {n}',
     done: '{n} {what} hechos',
     toGo: 'quedan {n}',
-    stages: 'tirones',
   },
   target: {
     turn: 'Gire {bolt}',

@@ -35,6 +35,13 @@ export const walkReview: SameKeys<typeof english> = {
     toOffice: 'Dejarlo a\nla oficina',
     release: 'Entregar al taller',
   },
+  amend: {
+    button: 'Una pieza o una medida está mal',
+    title: '¿Qué se anotó mal?',
+    text: 'En la unión no se hace nada otra vez: solo se corrige lo escrito.',
+    both: 'Las dos anotaciones quedan en el registro.',
+    save: 'Corregirlo',
+  },
   fact: {
     fastPass: '{count} lecturas en {seconds} s en {pass}',
     pickedWrench: '{wrench} se eligió de la lista, no se escaneó',
