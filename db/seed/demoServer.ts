@@ -42,7 +42,15 @@ export async function startDemoServer(secret: string): Promise<DemoServer> {
   const url = `http://127.0.0.1:${port}`;
   const environment = { DEMO: '1', NODE_ENV: 'development', HOST: '127.0.0.1', PORT: String(port), LOG_LEVEL: 'warn' };
   const child = spawn(process.execPath, ['--import', 'tsx', 'server/main.ts'], {
-    env: { ...process.env, ...environment, APP_SECRET: secret, PUBLIC_URL: url, BLOB_DIR: folder, DIST_DIR: folder },
+    env: {
+      ...process.env,
+      ...environment,
+      APP_SECRET: secret,
+      // Printed into the QR code of the demo's proof: where the shop will be reached, not this helper.
+      PUBLIC_URL: process.env['PUBLIC_URL'] ?? url,
+      BLOB_DIR: folder,
+      DIST_DIR: folder,
+    },
     stdio: ['ignore', 'pipe', 'pipe'],
   });
   let said = '';
