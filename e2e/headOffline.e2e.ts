@@ -3,6 +3,7 @@ import { judgePdf } from '../tests/support/pdfTools';
 import { startServerProcess, type ServerProcess } from '../tests/support/serverProcess';
 import { ACCOUNTS, signInOffice } from './support/office';
 import { StandTablet } from './support/standTablet';
+import { readingForHole } from './support/walkBehind';
 import { makeProfile, removeProfile, startTabletBrowser, type TabletBrowser } from './support/tabletBrowser';
 
 const JOB = '24-0615';
@@ -50,6 +51,9 @@ test.describe('a cylinder head, walked without the server', () => {
       await stand.tapHead('9');
       await expect(stand.id('refusal')).toBeVisible();
       await expect(stand.page.getByText('3 bolts done')).toBeVisible();
+      const attempt = await readingForHole(stand.page, 'h9');
+      expect(attempt.refused).toBe('notTheInstruction');
+      expect(attempt.eventsAfter).toBe(attempt.eventsBefore);
       await stand.id('different').click();
       await stand.record('29.9');
       expect(await stand.bolt()).toBe('4');
