@@ -54,14 +54,16 @@ interface World {
   /** Hashes that a person was shown as saved, by walk. */
   shown: Map<string, string[]>;
   epoch: number;
+  /** Programs that were killed: what they would go on to show, nobody sees. */
+  dead: Set<SyncKit>;
 }
 
-async function append({ kit, shown }: World, walk: string, photo: boolean): Promise<void> {
+async function append({ kit, shown, dead }: World, walk: string, photo: boolean): Promise<void> {
   const log = await openTestWalk(kit.tablet, walk);
   try {
     if (log.snapshot().next === 0) {
       const begun = await log.append(byTechnician(opened()));
-      if (!begun.ok) return;
+      if (!begun.ok || dead.has(kit)) return;
       shown.set(walk, [begun.value.head]);
     }
     const seen = shown.get(walk) ?? [];
@@ -70,7 +72,7 @@ async function append({ kit, shown }: World, walk: string, photo: boolean): Prom
       ? ({ type: 'photo.added', data: { blob: blob.sha256, hole: null, caption: 'x' } } as const)
       : note(`${seen.length}`);
     const saved = await log.append({ ...byTechnician(act), blobs: photo ? [blob] : [] });
-    if (saved.ok) shown.set(walk, [...seen, saved.value.head]);
+    if (saved.ok && !dead.has(kit)) shown.set(walk, [...seen, saved.value.head]);
   } finally {
     log.close();
   }
@@ -81,6 +83,7 @@ async function crash(world: World, { at, failure, walk }: Extract<Happening, { k
   const { kit } = world;
   const { disk } = kit.tablet;
   disk.failAt(at, failure);
+  void disk.death.then(() => world.dead.add(kit));
   const busy = async () => {
     await append(world, WALKS[walk] ?? WALK, false);
     await kit.pass(1000);
@@ -160,7 +163,7 @@ describe('a tablet and a server', () => {
   it('hold the same in the end, and lose nothing on the way', { timeout: 120_000 }, async () => {
     await fc.assert(
       fc.asyncProperty(fc.array(happening, { minLength: 3, maxLength: 25 }), async (history) => {
-        const world: World = { kit: await syncKit(), shown: new Map(), epoch: 1 };
+        const world: World = { kit: await syncKit(), shown: new Map(), epoch: 1, dead: new Set() };
         world.kit.engine.start();
         for (const what of history) {
           await happen(world, what);
