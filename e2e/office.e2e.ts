@@ -33,7 +33,7 @@ test.describe('the office', () => {
     await expect(page.getByText('This is no e-mail address.')).toBeVisible();
     const wait = page.getByText(/Too many wrong passwords in a row\. Wait \d+ seconds?/);
     await expect(async () => {
-      await signIn(page, { ...ACCOUNTS.clerk, password: 'wrong' });
+      await signIn(page, { email: 'oda@brindle-lane.example', password: 'wrong' });
       await expect(wait.or(page.getByText('E-mail address or password is not right.'))).toBeVisible();
       await expect(wait).toBeVisible({ timeout: 400 });
     }).toPass();
